@@ -27,6 +27,8 @@ export const ForecastRun = defineEntity({
     requestedAt: p.datetime(),
     requestedBy: p.uuid(),
     startedAt: p.datetime().nullable(),
+    /** Moves while a worker is at it; a run whose heart stopped is taken up again. */
+    heartbeatAt: p.datetime().nullable(),
     finishedAt: p.datetime().nullable(),
     version: p.integer().version(),
   },

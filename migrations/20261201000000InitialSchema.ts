@@ -167,7 +167,7 @@ create table forecast_run (
   id uuid primary key, organisation_id uuid not null, study_id uuid not null, number integer not null check (number >= 1),
   status text not null check (status in ('queued', 'running', 'done', 'failed', 'cancelled')), cutoff_on date not null, plan_version_id uuid not null, data_cut_id uuid,
   draws integer not null, seed bigint not null, draws_done integer not null default 0, study_file text not null, study_sha256 text not null, forecast_file text, forecast jsonb, engine_version text, failure jsonb,
-  requested_at timestamptz not null, requested_by uuid not null references person (id), started_at timestamptz, finished_at timestamptz, version integer not null default 1,
+  requested_at timestamptz not null, requested_by uuid not null references person (id), started_at timestamptz, heartbeat_at timestamptz, finished_at timestamptz, version integer not null default 1,
   check ((status = 'done') = (forecast_file is not null)), check (status <> 'failed' or failure is not null),
   unique (organisation_id, id), unique (organisation_id, study_id, number),
   foreign key (organisation_id, study_id) references study (organisation_id, id) deferrable initially deferred,
