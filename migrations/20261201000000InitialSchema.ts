@@ -74,12 +74,12 @@ create unique index person_email on person (lower(email));
 create table session (
   id uuid primary key, token text not null unique, user_id uuid not null references person (id) on delete cascade,
   expires_at timestamptz not null, ip_address text, user_agent text, created_at timestamptz not null, updated_at timestamptz not null);
-create index session_user on session (user_id);
+create index session_by_user on session (user_id);
 create table account (
   id uuid primary key, account_id text not null, provider_id text not null, user_id uuid not null references person (id) on delete cascade,
   access_token text, refresh_token text, id_token text, access_token_expires_at timestamptz, refresh_token_expires_at timestamptz,
   scope text, password text, created_at timestamptz not null, updated_at timestamptz not null, unique (provider_id, account_id));
-create index account_user on account (user_id);
+create index account_by_user on account (user_id);
 create table verification (
   id uuid primary key, identifier text not null, value text not null, expires_at timestamptz not null,
   created_at timestamptz not null, updated_at timestamptz not null);

@@ -9,15 +9,6 @@ const HANDLERS: { [Q in QueueName]: (payload: JobPayload<Q>) => Promise<void> } 
   'mail-deliver': deliverMail,
 };
 
-/** Makes the queue's tables and queues; needs the owner's role, so migrating does it. */
-export async function installQueues(ownerUrl: string): Promise<void> {
-  const boss = new PgBoss({ connectionString: ownerUrl, supervise: false, schedule: false });
-  boss.on('error', (error) => log.error({ err: error }, 'queue'));
-  await boss.start();
-  for (const [name, { options }] of Object.entries(QUEUES)) await boss.createQueue(name, { name, ...options });
-  await boss.stop({ graceful: false });
-}
-
 /** Takes jobs until stopped. Stopping waits for the jobs at hand. */
 export async function startWorker({ url }: { url: string }): Promise<{ stop(): Promise<void> }> {
   const boss = new PgBoss({ connectionString: url, migrate: false, maintenanceIntervalSeconds: 15 });
