@@ -72,11 +72,11 @@ create table person (
   image text, created_at timestamptz not null, updated_at timestamptz not null);
 create unique index person_email on person (lower(email));
 create table session (
-  id uuid primary key, token text not null unique, user_id uuid not null references person (id) on delete cascade,
+  id uuid primary key, token text not null unique, user_id uuid not null references person (id) on delete cascade deferrable initially deferred,
   expires_at timestamptz not null, ip_address text, user_agent text, created_at timestamptz not null, updated_at timestamptz not null);
 create index session_by_user on session (user_id);
 create table account (
-  id uuid primary key, account_id text not null, provider_id text not null, user_id uuid not null references person (id) on delete cascade,
+  id uuid primary key, account_id text not null, provider_id text not null, user_id uuid not null references person (id) on delete cascade deferrable initially deferred,
   access_token text, refresh_token text, id_token text, access_token_expires_at timestamptz, refresh_token_expires_at timestamptz,
   scope text, password text, created_at timestamptz not null, updated_at timestamptz not null, unique (provider_id, account_id));
 create index account_by_user on account (user_id);
@@ -91,13 +91,13 @@ const tenancyTables = /* sql */ `
 create table organisation (
   id uuid primary key, name text not null check (length(name) between 1 and 200), is_demonstration boolean not null default false, created_at timestamptz not null);
 create table organisation_member (
-  id uuid primary key, organisation_id uuid not null references organisation (id), person_id uuid not null references person (id),
+  id uuid primary key, organisation_id uuid not null references organisation (id), person_id uuid not null references person (id) deferrable initially deferred,
   role text not null check (role in ('owner', 'member')), created_at timestamptz not null,
   unique (organisation_id, id), unique (organisation_id, person_id));
 create index organisation_member_person on organisation_member (person_id);
 create table study (
   id uuid primary key, organisation_id uuid not null references organisation (id), code text not null check (code ~ '^[A-Za-z0-9][A-Za-z0-9._-]{0,39}$'),
-  title text not null, sponsor_name text not null, created_at timestamptz not null, created_by uuid not null references person (id), version integer not null default 1,
+  title text not null, sponsor_name text not null, created_at timestamptz not null, created_by uuid not null references person (id) deferrable initially deferred, version integer not null default 1,
   unique (organisation_id, id), unique (organisation_id, code));
 create table site (
   id uuid primary key, organisation_id uuid not null, study_id uuid not null, code text not null, name text not null, city text not null, country text not null check (country ~ '^[A-Z]{2}$'),
@@ -107,7 +107,7 @@ create table site (
   unique (organisation_id, id), unique (organisation_id, study_id, code),
   foreign key (organisation_id, study_id) references study (organisation_id, id) deferrable initially deferred);
 create table study_member (
-  id uuid primary key, organisation_id uuid not null, study_id uuid not null, person_id uuid not null references person (id),
+  id uuid primary key, organisation_id uuid not null, study_id uuid not null, person_id uuid not null references person (id) deferrable initially deferred,
   role text not null check (role in ('statistician', 'manager', 'coordinator', 'sponsor')), site_id uuid, created_at timestamptz not null,
   check ((role = 'coordinator') = (site_id is not null)),
   unique (organisation_id, id), unique (organisation_id, study_id, person_id),
@@ -117,7 +117,7 @@ create index study_member_person on study_member (person_id);
 create table invitation (
   id uuid primary key, organisation_id uuid not null references organisation (id), study_id uuid, site_id uuid,
   role text not null check (role in ('owner', 'statistician', 'manager', 'coordinator', 'sponsor')), email text not null, name text not null, token_hash text not null unique,
-  expires_at timestamptz not null, accepted_at timestamptz, revoked_at timestamptz, invited_by uuid not null references person (id), created_at timestamptz not null,
+  expires_at timestamptz not null, accepted_at timestamptz, revoked_at timestamptz, invited_by uuid not null references person (id) deferrable initially deferred, created_at timestamptz not null,
   check ((role = 'owner') = (study_id is null)), check ((role = 'coordinator') = (site_id is not null)),
   unique (organisation_id, id),
   foreign key (organisation_id, study_id) references study (organisation_id, id) deferrable initially deferred,
@@ -126,18 +126,18 @@ create table invitation (
 
 const studyTables = /* sql */ `
 create table plan_draft (
-  id uuid primary key, organisation_id uuid not null, study_id uuid not null, sections jsonb not null, updated_at timestamptz not null, updated_by uuid not null references person (id),
+  id uuid primary key, organisation_id uuid not null, study_id uuid not null, sections jsonb not null, updated_at timestamptz not null, updated_by uuid not null references person (id) deferrable initially deferred,
   version integer not null default 1, unique (organisation_id, id), unique (organisation_id, study_id),
   foreign key (organisation_id, study_id) references study (organisation_id, id) deferrable initially deferred);
 create table plan_version (
   id uuid primary key, organisation_id uuid not null, study_id uuid not null, number integer not null check (number >= 1), plan jsonb not null,
-  reason_kind text, reason text, created_at timestamptz not null, created_by uuid not null references person (id),
+  reason_kind text, reason text, created_at timestamptz not null, created_by uuid not null references person (id) deferrable initially deferred,
   unique (organisation_id, id), unique (organisation_id, study_id, number),
   foreign key (organisation_id, study_id) references study (organisation_id, id) deferrable initially deferred);
 create table site_month (
   id uuid primary key, organisation_id uuid not null, study_id uuid not null, site_id uuid not null, month date not null check (extract(day from month) = 1),
   screened integer check (screened >= 0), failed integer check (failed >= 0), randomised integer check (randomised >= 0), events integer check (events >= 0), withdrawn integer check (withdrawn >= 0),
-  logged_at timestamptz not null, logged_by uuid not null references person (id), version integer not null default 1,
+  logged_at timestamptz not null, logged_by uuid not null references person (id) deferrable initially deferred, version integer not null default 1,
   unique (organisation_id, id), unique (organisation_id, site_id, month),
   foreign key (organisation_id, study_id) references study (organisation_id, id) deferrable initially deferred,
   foreign key (organisation_id, site_id) references site (organisation_id, id) deferrable initially deferred);
@@ -145,14 +145,14 @@ create index site_month_study on site_month (organisation_id, study_id, month);
 create table site_month_revision (
   id uuid primary key, organisation_id uuid not null, site_month_id uuid not null,
   field text not null check (field in ('screened', 'failed', 'randomised', 'events', 'withdrawn')), old_value integer, new_value integer,
-  reason_kind text, reason text, changed_at timestamptz not null, changed_by uuid not null references person (id),
+  reason_kind text, reason text, changed_at timestamptz not null, changed_by uuid not null references person (id) deferrable initially deferred,
   unique (organisation_id, id),
   foreign key (organisation_id, site_month_id) references site_month (organisation_id, id) deferrable initially deferred);
 create index site_month_revision_entry on site_month_revision (organisation_id, site_month_id, changed_at);
 create table data_cut (
   id uuid primary key, organisation_id uuid not null, study_id uuid not null, number integer not null check (number >= 1), cutoff_on date not null,
   kind text not null check (kind in ('subjects', 'aggregate')), file_name text, file_key text, file_sha256 text, file_bytes integer,
-  counts jsonb not null, aggregate jsonb, differences jsonb not null, note text, accepted_at timestamptz not null, accepted_by uuid not null references person (id),
+  counts jsonb not null, aggregate jsonb, differences jsonb not null, note text, accepted_at timestamptz not null, accepted_by uuid not null references person (id) deferrable initially deferred,
   unique (organisation_id, id), unique (organisation_id, study_id, number),
   foreign key (organisation_id, study_id) references study (organisation_id, id) deferrable initially deferred);
 create table data_cut_subject (
@@ -167,7 +167,7 @@ create table forecast_run (
   id uuid primary key, organisation_id uuid not null, study_id uuid not null, number integer not null check (number >= 1),
   status text not null check (status in ('queued', 'running', 'done', 'failed', 'cancelled')), cutoff_on date not null, plan_version_id uuid not null, data_cut_id uuid,
   draws integer not null, seed bigint not null, draws_done integer not null default 0, study_file text not null, study_sha256 text not null, forecast_file text, forecast jsonb, engine_version text, failure jsonb,
-  requested_at timestamptz not null, requested_by uuid not null references person (id), started_at timestamptz, heartbeat_at timestamptz, finished_at timestamptz, version integer not null default 1,
+  requested_at timestamptz not null, requested_by uuid not null references person (id) deferrable initially deferred, started_at timestamptz, heartbeat_at timestamptz, finished_at timestamptz, version integer not null default 1,
   check ((status = 'done') = (forecast_file is not null)), check (status <> 'failed' or failure is not null),
   unique (organisation_id, id), unique (organisation_id, study_id, number),
   foreign key (organisation_id, study_id) references study (organisation_id, id) deferrable initially deferred,
@@ -175,17 +175,17 @@ create table forecast_run (
   foreign key (organisation_id, data_cut_id) references data_cut (organisation_id, id) deferrable initially deferred);
 create table publication (
   id uuid primary key, organisation_id uuid not null, study_id uuid not null, run_id uuid not null, number integer not null check (number >= 1), note text not null, content jsonb not null, audit_digest text not null,
-  published_at timestamptz not null, published_by uuid not null references person (id),
+  published_at timestamptz not null, published_by uuid not null references person (id) deferrable initially deferred,
   unique (organisation_id, id), unique (organisation_id, study_id, number), unique (organisation_id, run_id),
   foreign key (organisation_id, study_id) references study (organisation_id, id) deferrable initially deferred,
   foreign key (organisation_id, run_id) references forecast_run (organisation_id, id) deferrable initially deferred);
 create table publication_acknowledgement (
-  id uuid primary key, organisation_id uuid not null, publication_id uuid not null, person_id uuid not null references person (id), acknowledged_at timestamptz not null,
+  id uuid primary key, organisation_id uuid not null, publication_id uuid not null, person_id uuid not null references person (id) deferrable initially deferred, acknowledged_at timestamptz not null,
   unique (organisation_id, publication_id, person_id),
   foreign key (organisation_id, publication_id) references publication (organisation_id, id) deferrable initially deferred);
 create table alert_rule (
   id uuid primary key, organisation_id uuid not null, study_id uuid not null, milestone_code text not null, condition jsonb not null, recipients jsonb not null, is_active boolean not null default true,
-  created_at timestamptz not null, created_by uuid not null references person (id), version integer not null default 1,
+  created_at timestamptz not null, created_by uuid not null references person (id) deferrable initially deferred, version integer not null default 1,
   unique (organisation_id, id),
   foreign key (organisation_id, study_id) references study (organisation_id, id) deferrable initially deferred);
 create table alert (
