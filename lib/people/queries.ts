@@ -27,7 +27,7 @@ interface InvitationRow {
 /** At most a thousand of each: a study's team, not a directory. */
 const MOST = 1000;
 
-export async function listPeople(scope: StudyScope<'people:read'>, _input: unknown, { em, clock }: CommandContext): Promise<People> {
+export async function listPeople(scope: StudyScope<'people:read'>, _input: unknown, { em, clock }: Pick<CommandContext, 'em' | 'clock'>): Promise<People> {
   const members = await em.execute<MemberRow[]>(
     `select m.id, p.name, p.email, m.role, s.code as site_code, m.created_at as since
        from study_member m join person p on p.id = m.person_id left join site s on s.organisation_id = m.organisation_id and s.id = m.site_id
@@ -93,4 +93,12 @@ export async function findInvitation(token: string, em: EntityManager, now: Date
     email: invitation.email,
     hasAccount: account !== undefined,
   };
+}
+
+/** Sites that a coordinator can be invited for. */
+export async function listInvitableSites(scope: StudyScope<'people:read'>, em: EntityManager): Promise<{ code: string; name: string }[]> {
+  return em.execute<{ code: string; name: string }[]>(`select code, name from site where organisation_id = ? and study_id = ? and closed_on is null order by code limit 5000`, [
+    scope.organisationId,
+    scope.studyId,
+  ]);
 }
