@@ -22,7 +22,7 @@ interface Typed {
   name: string;
   email: string;
   role: StudyRole;
-  siteCode: string | undefined;
+  siteCode?: string | undefined;
 }
 
 export function InviteForm({ code, roles, sites }: Props) {
