@@ -10,7 +10,15 @@ export function AuditFilter({ values }: { values: Record<string, string | undefi
       <TextField label="From" name="from" defaultValue={values.from} placeholder="2027-03-01" inputMode="numeric" />
       <TextField label="To" name="to" defaultValue={values.to} placeholder="2027-03-31" inputMode="numeric" />
       <TextField label="Person" name="person" defaultValue={values.person} />
-      <SelectField label="Kind" name="kind" defaultValue={values.kind ?? ''} options={[{ value: '', label: 'All' }, ...Object.entries(AUDIT_KINDS).map(([value, label]) => ({ value, label }))]} />
+      <SelectField
+        label="Kind"
+        name="kind"
+        defaultValue={values.kind ?? ''}
+        options={[
+          { value: '', label: 'All' },
+          ...Object.entries(AUDIT_KINDS).map(([value, label]) => ({ value, label })),
+        ]}
+      />
       <Button type="submit" variant="second">
         Show
       </Button>

@@ -37,9 +37,25 @@ export function AcceptInvitationForm({ token, name, email }: Props) {
           {errors.root.message}
         </Notice>
       )}
-      <TextField label="Your name, as others will see it" autoComplete="name" error={errors.name?.message} {...form.register('name')} />
-      <TextField label="Password" type="password" autoComplete="new-password" hint="At least 12 characters; a few words in a row are fine." error={errors.password?.message} {...form.register('password')} />
-      <Button type="submit" pending={isSubmitting || (isSubmitSuccessful && !errors.root && !errors.password)} pendingLabel="Making your account">
+      <TextField
+        label="Your name, as others will see it"
+        autoComplete="name"
+        error={errors.name?.message}
+        {...form.register('name')}
+      />
+      <TextField
+        label="Password"
+        type="password"
+        autoComplete="new-password"
+        hint="At least 12 characters; a few words in a row are fine."
+        error={errors.password?.message}
+        {...form.register('password')}
+      />
+      <Button
+        type="submit"
+        pending={isSubmitting || (isSubmitSuccessful && !errors.root && !errors.password)}
+        pendingLabel="Making your account"
+      >
         Accept and sign in
       </Button>
     </form>

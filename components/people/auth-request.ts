@@ -4,7 +4,12 @@ import { OfflineError } from '@/lib/http/client';
 export async function authRequest(path: string, body: unknown, sentences: Record<number, string>): Promise<void> {
   let response: Response;
   try {
-    response = await fetch(`/api/auth${path}`, { method: 'POST', headers: { 'content-type': 'application/json' }, body: JSON.stringify(body), credentials: 'same-origin' });
+    response = await fetch(`/api/auth${path}`, {
+      method: 'POST',
+      headers: { 'content-type': 'application/json' },
+      body: JSON.stringify(body),
+      credentials: 'same-origin',
+    });
   } catch {
     throw new OfflineError();
   }

@@ -11,7 +11,11 @@ export function ForgottenPasswordForm() {
   const { errors, isSubmitting, isSubmitSuccessful } = formState;
   const send = handleSubmit(async ({ email }) => {
     try {
-      await authRequest('/request-password-reset', { email, redirectTo: '/reset-password' }, { 400: 'Give an e-mail address, for example name@company.example.' });
+      await authRequest(
+        '/request-password-reset',
+        { email, redirectTo: '/reset-password' },
+        { 400: 'Give an e-mail address, for example name@company.example.' },
+      );
     } catch (error) {
       setError('root', { message: (error as Error).message });
     }
@@ -30,7 +34,13 @@ export function ForgottenPasswordForm() {
           {errors.root.message}
         </Notice>
       )}
-      <TextField label="E-mail" type="email" autoComplete="username" error={errors.email?.message} {...register('email', { required: 'Give your e-mail address.' })} />
+      <TextField
+        label="E-mail"
+        type="email"
+        autoComplete="username"
+        error={errors.email?.message}
+        {...register('email', { required: 'Give your e-mail address.' })}
+      />
       <Button type="submit" pending={isSubmitting} pendingLabel="Sending">
         Send me a link
       </Button>

@@ -27,7 +27,10 @@ interface Typed {
 
 export function InviteForm({ code, roles, sites }: Props) {
   const empty: Typed = { name: '', email: '', role: roles[0]!, siteCode: undefined };
-  const form = useForm<Typed, unknown, InvitePersonBody>({ resolver: zodResolver(invitePersonBody), defaultValues: empty });
+  const form = useForm<Typed, unknown, InvitePersonBody>({
+    resolver: zodResolver(invitePersonBody),
+    defaultValues: empty,
+  });
   const { errors } = form.formState;
   const role = useWatch({ control: form.control, name: 'role' });
   const invite = useInvitePerson(code);
@@ -51,14 +54,31 @@ export function InviteForm({ code, roles, sites }: Props) {
       )}
       <div className="grid gap-5 sm:grid-cols-2">
         <TextField label="Name" autoComplete="off" error={errors.name?.message} {...form.register('name')} />
-        <TextField label="E-mail" type="email" autoComplete="off" error={errors.email?.message} {...form.register('email')} />
-        <SelectField label="Role" options={roles.map((value) => ({ value, label: ROLE_NAMES[value] }))} error={errors.role?.message} {...form.register('role')} />
+        <TextField
+          label="E-mail"
+          type="email"
+          autoComplete="off"
+          error={errors.email?.message}
+          {...form.register('email')}
+        />
+        <SelectField
+          label="Role"
+          options={roles.map((value) => ({ value, label: ROLE_NAMES[value] }))}
+          error={errors.role?.message}
+          {...form.register('role')}
+        />
         {role === 'coordinator' && (
           <SelectField
             label="Site"
-            options={[{ value: '', label: sites.length > 0 ? 'Choose a site' : 'No site yet: add one first' }, ...sites.map((site) => ({ value: site.code, label: `${site.code} ${site.name}` }))]}
+            options={[
+              { value: '', label: sites.length > 0 ? 'Choose a site' : 'No site yet: add one first' },
+              ...sites.map((site) => ({ value: site.code, label: `${site.code} ${site.name}` })),
+            ]}
             error={errors.siteCode?.message}
-            {...form.register('siteCode', { setValueAs: (value: string) => value || undefined, shouldUnregister: true })}
+            {...form.register('siteCode', {
+              setValueAs: (value: string) => value || undefined,
+              shouldUnregister: true,
+            })}
           />
         )}
       </div>

@@ -24,7 +24,13 @@ export function InviteOwnerForm() {
   return (
     <form onSubmit={send} noValidate className="grid max-w-measure gap-5 sm:grid-cols-[1fr_1fr_auto] sm:items-end">
       <TextField label="Name" autoComplete="off" error={errors.name?.message} {...form.register('name')} />
-      <TextField label="E-mail" type="email" autoComplete="off" error={errors.email?.message} {...form.register('email')} />
+      <TextField
+        label="E-mail"
+        type="email"
+        autoComplete="off"
+        error={errors.email?.message}
+        {...form.register('email')}
+      />
       <Button type="submit" variant="second" pending={invite.isPending} pendingLabel="Sending">
         Invite an owner
       </Button>

@@ -21,7 +21,8 @@ export function JoinForm({ token, email, signedInAs }: Props) {
     return (
       <Notice title={`Sign in as ${email}`}>
         {signedInAs ? `You are signed in as ${signedInAs}. Sign out first, then ` : 'You have an account. '}
-        <Link href={`/sign-in?next=${encodeURIComponent(`/invitation/${token}`)}`}>sign in</Link> and come back to this invitation.
+        <Link href={`/sign-in?next=${encodeURIComponent(`/invitation/${token}`)}`}>sign in</Link> and come back to this
+        invitation.
       </Notice>
     );
   }

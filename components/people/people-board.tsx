@@ -36,7 +36,9 @@ export function PeopleBoard({ code, people, invitable, sites, sentences }: Props
         <InvitationsTable
           invitations={invitations}
           mayRevoke={(role) => role !== 'owner' && invitable.includes(role)}
-          onRevoke={(id) => revoke.mutate(id, { onError: fail, onSuccess: () => toast.success('The invitation is taken back.') })}
+          onRevoke={(id) =>
+            revoke.mutate(id, { onError: fail, onSuccess: () => toast.success('The invitation is taken back.') })
+          }
         />
       </Section>
       {invitable.length > 0 && (
@@ -63,14 +65,34 @@ export function PeopleBoard({ code, people, invitable, sites, sentences }: Props
         verb="End access"
         danger
         pending={end.isPending}
-        onConfirm={() => leaving && end.mutate(leaving.id, { onError: fail, onSuccess: () => toast.success(`${leaving.name}’s access has ended.`), onSettled: () => setLeaving(null) })}
+        onConfirm={() =>
+          leaving &&
+          end.mutate(leaving.id, {
+            onError: fail,
+            onSuccess: () => toast.success(`${leaving.name}’s access has ended.`),
+            onSettled: () => setLeaving(null),
+          })
+        }
       />
     </>
   );
 }
 
-function MembersTable({ members, mayEnd, onEnd }: { members: Member[]; mayEnd: (role: StudyRole) => boolean; onEnd: (member: Member) => void }) {
-  if (members.length === 0) return <EmptyState title="Nobody has a role yet">Invite the protocol statistician first: they set up the plan.</EmptyState>;
+function MembersTable({
+  members,
+  mayEnd,
+  onEnd,
+}: {
+  members: Member[];
+  mayEnd: (role: StudyRole) => boolean;
+  onEnd: (member: Member) => void;
+}) {
+  if (members.length === 0)
+    return (
+      <EmptyState title="Nobody has a role yet">
+        Invite the protocol statistician first: they set up the plan.
+      </EmptyState>
+    );
   return (
     <Table caption="People with a role in the study">
       <TableHead>
@@ -109,7 +131,15 @@ function MembersTable({ members, mayEnd, onEnd }: { members: Member[]; mayEnd: (
   );
 }
 
-function InvitationsTable({ invitations, mayRevoke, onRevoke }: { invitations: PendingInvitation[]; mayRevoke: (role: PendingInvitation['role']) => boolean; onRevoke: (id: string) => void }) {
+function InvitationsTable({
+  invitations,
+  mayRevoke,
+  onRevoke,
+}: {
+  invitations: PendingInvitation[];
+  mayRevoke: (role: PendingInvitation['role']) => boolean;
+  onRevoke: (id: string) => void;
+}) {
   if (invitations.length === 0) return <p className="text-ink-soft">No invitation is open.</p>;
   return (
     <Table caption="Open invitations">

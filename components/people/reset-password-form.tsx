@@ -13,11 +13,18 @@ import { password } from '@/lib/people/schema';
 const schema = z.strictObject({ newPassword: password });
 
 export function ResetPasswordForm({ token }: { token: string }) {
-  const { register, handleSubmit, setError, formState } = useForm({ resolver: zodResolver(schema), defaultValues: { newPassword: '' } });
+  const { register, handleSubmit, setError, formState } = useForm({
+    resolver: zodResolver(schema),
+    defaultValues: { newPassword: '' },
+  });
   const { errors, isSubmitting, isSubmitSuccessful } = formState;
   const save = handleSubmit(async ({ newPassword }) => {
     try {
-      await authRequest('/reset-password', { token, newPassword }, { 400: 'This link has been used or is too old, or the password is too easy to guess.' });
+      await authRequest(
+        '/reset-password',
+        { token, newPassword },
+        { 400: 'This link has been used or is too old, or the password is too easy to guess.' },
+      );
     } catch (error) {
       setError('root', { message: (error as Error).message });
     }
@@ -36,7 +43,14 @@ export function ResetPasswordForm({ token }: { token: string }) {
           {errors.root.message}
         </Notice>
       )}
-      <TextField label="New password" type="password" autoComplete="new-password" hint="At least 12 characters." error={errors.newPassword?.message} {...register('newPassword')} />
+      <TextField
+        label="New password"
+        type="password"
+        autoComplete="new-password"
+        hint="At least 12 characters."
+        error={errors.newPassword?.message}
+        {...register('newPassword')}
+      />
       <Button type="submit" pending={isSubmitting} pendingLabel="Saving">
         Save the new password
       </Button>

@@ -37,8 +37,20 @@ export function SignInForm({ next }: { next: string }) {
           {errors.root.message}
         </Notice>
       )}
-      <TextField label="E-mail" type="email" autoComplete="username" error={errors.email?.message} {...register('email', { required: 'Give your e-mail address.' })} />
-      <TextField label="Password" type="password" autoComplete="current-password" error={errors.password?.message} {...register('password', { required: 'Give your password.' })} />
+      <TextField
+        label="E-mail"
+        type="email"
+        autoComplete="username"
+        error={errors.email?.message}
+        {...register('email', { required: 'Give your e-mail address.' })}
+      />
+      <TextField
+        label="Password"
+        type="password"
+        autoComplete="current-password"
+        error={errors.password?.message}
+        {...register('password', { required: 'Give your password.' })}
+      />
       <div className="flex flex-wrap items-center gap-5">
         <Button type="submit" pending={isSubmitting || (isSubmitSuccessful && !errors.root)} pendingLabel="Signing in">
           Sign in

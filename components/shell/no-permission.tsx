@@ -11,7 +11,12 @@ interface NoPermissionProps {
 /** A page that exists and is not this role's. What it holds is not hinted at. */
 export function NoPermission({ detail, code }: NoPermissionProps) {
   return (
-    <EmptyState title="This page is not open to you" action={<Link href={code ? `/studies/${code}` : '/studies'}>{code ? `What you see of ${code}` : 'Your studies'}</Link>}>
+    <EmptyState
+      title="This page is not open to you"
+      action={
+        <Link href={code ? `/studies/${code}` : '/studies'}>{code ? `What you see of ${code}` : 'Your studies'}</Link>
+      }
+    >
       <p>{detail}</p>
     </EmptyState>
   );

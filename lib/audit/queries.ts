@@ -24,7 +24,11 @@ export interface AuditPage {
   total: number;
 }
 
-export async function listAudit(scope: StudyScope<'audit:read'>, { query }: { query: AuditQuery }, { em }: Pick<CommandContext, 'em'>): Promise<AuditPage> {
+export async function listAudit(
+  scope: StudyScope<'audit:read'>,
+  { query }: { query: AuditQuery },
+  { em }: Pick<CommandContext, 'em'>,
+): Promise<AuditPage> {
   const where = ['organisation_id = ?', 'study_id = ?'];
   const values: unknown[] = [scope.organisationId, scope.studyId];
   const narrow = (condition: string, value: unknown): void => {

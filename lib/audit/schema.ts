@@ -23,6 +23,11 @@ export const auditQuery = z.strictObject({
   from: z.iso.date('Give a calendar date, for example 2027-03-14.').optional(),
   to: z.iso.date('Give a calendar date, for example 2027-03-14.').optional(),
   person: z.string().trim().max(200).optional(),
-  kind: z.string().trim().max(40).regex(/^[a-z-]*$/, 'Choose a kind from the list.').optional(),
+  kind: z
+    .string()
+    .trim()
+    .max(40)
+    .regex(/^[a-z-]*$/, 'Choose a kind from the list.')
+    .optional(),
 });
 export type AuditQuery = z.infer<typeof auditQuery>;

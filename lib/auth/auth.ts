@@ -22,7 +22,10 @@ function create() {
       modelName: 'rate_limit',
       window: 60,
       max: 300,
-      customRules: { '/sign-in/email': { window: 60, max: signInAttempts }, '/request-password-reset': { window: 600, max: 5 } },
+      customRules: {
+        '/sign-in/email': { window: 60, max: signInAttempts },
+        '/request-password-reset': { window: 600, max: 5 },
+      },
     },
     // Accounts are by invitation only: `lib/people/commands.ts` makes them, with their role, in one transaction.
     emailAndPassword: {

@@ -20,7 +20,12 @@ interface FoundStudy {
  *
  * Two organisations may use one study code; a person in both gets the study of the organisation that they joined first.
  */
-export async function authoriseStudy<A extends StudyAction>(em: EntityManager, actor: Actor, studyCode: string, action: A): Promise<StudyScope<A>> {
+export async function authoriseStudy<A extends StudyAction>(
+  em: EntityManager,
+  actor: Actor,
+  studyCode: string,
+  action: A,
+): Promise<StudyScope<A>> {
   await setTenancy(em, { personId: actor.personId });
   const [found] = await em.execute<FoundStudy[]>(
     `select o.id as organisation_id, o.name as organisation_name, o.is_demonstration, s.id as study_id, s.code, coalesce(m.role, 'owner') as role, m.site_id
@@ -52,12 +57,19 @@ export async function authoriseStudy<A extends StudyAction>(em: EntityManager, a
 /** An owner who also has a study role keeps what owners may do. */
 async function ownerMay(em: EntityManager, actor: Actor, found: FoundStudy, action: StudyAction): Promise<boolean> {
   if (found.role === 'owner' || !roleMay('owner', action)) return false;
-  const rows = await em.execute(`select 1 from organisation_member where organisation_id = ? and person_id = ? and role = 'owner'`, [found.organisation_id, actor.personId]);
+  const rows = await em.execute(
+    `select 1 from organisation_member where organisation_id = ? and person_id = ? and role = 'owner'`,
+    [found.organisation_id, actor.personId],
+  );
   return rows.length > 0;
 }
 
 /** The only maker of an organisation scope: the person has to own the organisation. */
-export async function authoriseOrganisation<A extends OrganisationAction>(em: EntityManager, actor: Actor, action: A): Promise<OrganisationScope<A>> {
+export async function authoriseOrganisation<A extends OrganisationAction>(
+  em: EntityManager,
+  actor: Actor,
+  action: A,
+): Promise<OrganisationScope<A>> {
   await setTenancy(em, { personId: actor.personId });
   const [found] = await em.execute<{ id: string; name: string }[]>(
     `select o.id, o.name from organisation o join organisation_member w on w.organisation_id = o.id
@@ -66,5 +78,11 @@ export async function authoriseOrganisation<A extends OrganisationAction>(em: En
   );
   if (!found) throw new ForbiddenError('Only an owner of the organisation may open this.');
   await setTenancy(em, { organisationId: found.id, personId: actor.personId });
-  return { action, actor, role: 'owner', organisationId: found.id, organisationName: found.name } as OrganisationScope<A>;
+  return {
+    action,
+    actor,
+    role: 'owner',
+    organisationId: found.id,
+    organisationName: found.name,
+  } as OrganisationScope<A>;
 }

@@ -52,7 +52,14 @@ const plain = (entity: object | null): Row | null => (entity ? { ...(entity as R
 
 /** better-auth's storage through MikroORM. `manager` gives the EntityManager to work on: a fork, or an open transaction's. */
 export function mikroOrmAdapter(getManager: () => EntityManager) {
-  const config = { adapterId: 'mikro-orm', supportsJSON: true, supportsDates: true, supportsBooleans: true, supportsNumericIds: false, supportsUUIDs: true };
+  const config = {
+    adapterId: 'mikro-orm',
+    supportsJSON: true,
+    supportsDates: true,
+    supportsBooleans: true,
+    supportsNumericIds: false,
+    supportsUUIDs: true,
+  };
   const storage = (em: () => EntityManager) => () => ({
     async create<T extends Row>({ model, data }: { model: string; data: T }): Promise<T> {
       const manager = em();
@@ -64,7 +71,12 @@ export function mikroOrmAdapter(getManager: () => EntityManager) {
       return plain(await em().findOne<Row>(entityName(model), filter(where), { disableIdentityMap: true })) as T | null;
     },
     async findMany<T>({ model, where, limit, sortBy, offset }: FindMany): Promise<T[]> {
-      const options = { limit, offset, disableIdentityMap: true, ...(sortBy ? { orderBy: { [sortBy.field]: sortBy.direction } } : {}) };
+      const options = {
+        limit,
+        offset,
+        disableIdentityMap: true,
+        ...(sortBy ? { orderBy: { [sortBy.field]: sortBy.direction } } : {}),
+      };
       const found = await em().find<Row>(entityName(model), filter(where), options);
       return found.map((entity) => plain(entity) as T);
     },
@@ -102,7 +114,12 @@ export function mikroOrmAdapter(getManager: () => EntityManager) {
       ...config,
       transaction: (callback) =>
         getManager().transactional((trx) =>
-          callback(createAdapterFactory({ config: { ...config, transaction: false }, adapter: storage(() => trx as EntityManager) })({})),
+          callback(
+            createAdapterFactory({
+              config: { ...config, transaction: false },
+              adapter: storage(() => trx as EntityManager),
+            })({}),
+          ),
         ),
     },
     adapter: storage(getManager),
@@ -125,11 +142,20 @@ interface Increment {
 }
 
 /** One matching row, locked, changed and returned. PostgreSQL re-checks the filter after waiting for the lock, so a race has one winner. */
-async function lockedRow(em: EntityManager, model: string, where: CleanedWhere[], change: (manager: EntityManager, row: Row) => void): Promise<Row | null> {
+async function lockedRow(
+  em: EntityManager,
+  model: string,
+  where: CleanedWhere[],
+  change: (manager: EntityManager, row: Row) => void,
+): Promise<Row | null> {
   if (where.length === 0) return null;
   return em.transactional(async (trx) => {
     const manager = trx as EntityManager;
-    const [row] = await manager.find<Row>(entityName(model), filter(where), { limit: 1, lockMode: LockMode.PESSIMISTIC_WRITE, refresh: true });
+    const [row] = await manager.find<Row>(entityName(model), filter(where), {
+      limit: 1,
+      lockMode: LockMode.PESSIMISTIC_WRITE,
+      refresh: true,
+    });
     if (!row) return null;
     const before = plain(row);
     change(manager, row);

@@ -24,12 +24,21 @@ interface Permission {
 }
 
 export const STUDY_PERMISSIONS = {
-  'study:read': { sentence: 'see that the study exists, its code and title', roles: ['statistician', 'manager', 'coordinator', 'sponsor', 'owner'] },
+  'study:read': {
+    sentence: 'see that the study exists, its code and title',
+    roles: ['statistician', 'manager', 'coordinator', 'sponsor', 'owner'],
+  },
   'plan:read': { sentence: 'read the plan and its versions', roles: ['statistician', 'manager'] },
   'plan:save': { sentence: 'set up and change the plan', roles: ['statistician'] },
   'sites:read': { sentence: 'see every site', roles: ['statistician', 'manager'] },
-  'sites:change': { sentence: 'add sites and record activations, closures and caps', roles: ['statistician', 'manager'] },
-  'site-log:read': { sentence: 'read site logs (a coordinator: their own)', roles: ['statistician', 'manager', 'coordinator'] },
+  'sites:change': {
+    sentence: 'add sites and record activations, closures and caps',
+    roles: ['statistician', 'manager'],
+  },
+  'site-log:read': {
+    sentence: 'read site logs (a coordinator: their own)',
+    roles: ['statistician', 'manager', 'coordinator'],
+  },
   'site-log:log': { sentence: 'log the month of their own site', roles: ['coordinator'] },
   'site-log:correct': { sentence: 'correct a logged month of their own site, with a reason', roles: ['coordinator'] },
   'data-cuts:read': { sentence: 'see data cuts', roles: ['statistician'] },

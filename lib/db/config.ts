@@ -12,7 +12,13 @@ export function ormOptions(url: string, extra: Partial<Options> = {}): Options {
     // Calendar dates are strings everywhere; timestamps are UTC instants.
     forceUtcTimezone: true,
     pool: { min: 0, max: 10 },
-    migrations: { migrationsList: migrations, snapshot: false, disableForeignKeys: false, transactional: true, allOrNothing: true },
+    migrations: {
+      migrationsList: migrations,
+      snapshot: false,
+      disableForeignKeys: false,
+      transactional: true,
+      allOrNothing: true,
+    },
     dynamicImportProvider: (id) => import(/* webpackIgnore: true */ id),
     discovery: { warnWhenNoEntities: true },
     ...extra,

@@ -5,7 +5,10 @@ export const MAX_JSON_BYTES = 1024 * 1024;
 export const MAX_UPLOAD_BYTES = 10 * 1024 * 1024;
 
 /** Reads a request's body within its limit: JSON, or a form with one file. */
-export async function readBody(operation: Operation, request: Request): Promise<{ body: unknown; file?: UploadedFile }> {
+export async function readBody(
+  operation: Operation,
+  request: Request,
+): Promise<{ body: unknown; file?: UploadedFile }> {
   if (operation.method === 'GET' || operation.method === 'DELETE') return { body: {} };
   const type = request.headers.get('content-type')?.split(';')[0]?.trim().toLowerCase() ?? '';
   if (operation.upload) return readForm(request, type);
@@ -24,15 +27,21 @@ async function readForm(request: Request, type: string): Promise<{ body: unknown
   const bytes = await readBytes(request, MAX_UPLOAD_BYTES + 64 * 1024, '10 MB');
   let form: FormData;
   try {
-    form = await new Response(bytes as BodyInit, { headers: { 'content-type': request.headers.get('content-type')! } }).formData();
+    form = await new Response(bytes as BodyInit, {
+      headers: { 'content-type': request.headers.get('content-type')! },
+    }).formData();
   } catch {
     throw new MalformedError('The form could not be read.');
   }
   const file = form.get('file');
   if (!(file instanceof File)) throw new InvalidError([{ pointer: '/file', detail: 'Choose a file.' }]);
-  if (file.size > MAX_UPLOAD_BYTES) throw new TooLargeError('The file is larger than 10 MB. Send the listing without columns that are not needed.');
+  if (file.size > MAX_UPLOAD_BYTES)
+    throw new TooLargeError('The file is larger than 10 MB. Send the listing without columns that are not needed.');
   const fields = [...form.entries()].filter(([, value]) => typeof value === 'string');
-  return { body: Object.fromEntries(fields), file: { name: safeName(file.name), bytes: new Uint8Array(await file.arrayBuffer()) } };
+  return {
+    body: Object.fromEntries(fields),
+    file: { name: safeName(file.name), bytes: new Uint8Array(await file.arrayBuffer()) },
+  };
 }
 
 /** The last part of the name only, printable: it is shown and stored, never used as a path. */

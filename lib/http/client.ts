@@ -29,14 +29,22 @@ export type CallInput<O extends Operation> = {
 } & (O['upload'] extends 'file' ? { file: File } : unknown);
 
 /** Calls an operation from the browser; the reply is typed by its declaration. */
-export async function callOperation<O extends Operation>(operation: O, input: CallInput<O>): Promise<OperationReply<O>> {
+export async function callOperation<O extends Operation>(
+  operation: O,
+  input: CallInput<O>,
+): Promise<OperationReply<O>> {
   const file = (input as { file?: File }).file;
   let response: Response;
   try {
     response = await fetch(addressOf(operation, input.params, input.query), {
       method: operation.method,
       headers: file || operation.method === 'GET' ? {} : { 'content-type': 'application/json' },
-      body: operation.method === 'GET' || operation.method === 'DELETE' ? undefined : file ? formOf(file, input.body) : JSON.stringify(input.body ?? {}),
+      body:
+        operation.method === 'GET' || operation.method === 'DELETE'
+          ? undefined
+          : file
+            ? formOf(file, input.body)
+            : JSON.stringify(input.body ?? {}),
       signal: input.signal,
       credentials: 'same-origin',
     });
@@ -49,9 +57,13 @@ export async function callOperation<O extends Operation>(operation: O, input: Ca
 }
 
 export function addressOf(operation: Operation, params: unknown, query?: unknown): string {
-  const path = operation.path.replace(/\{(\w+)\}/g, (_, name: string) => encodeURIComponent(String((params as Record<string, unknown>)[name])));
+  const path = operation.path.replace(/\{(\w+)\}/g, (_, name: string) =>
+    encodeURIComponent(String((params as Record<string, unknown>)[name])),
+  );
   const search = new URLSearchParams(
-    Object.entries((query ?? {}) as Record<string, unknown>).flatMap(([key, value]) => (value === undefined || value === null ? [] : [[key, String(value)]])),
+    Object.entries((query ?? {}) as Record<string, unknown>).flatMap(([key, value]) =>
+      value === undefined || value === null ? [] : [[key, String(value)]],
+    ),
   ).toString();
   return search ? `${path}?${search}` : path;
 }
@@ -69,6 +81,12 @@ async function problemOf(response: Response): Promise<Problem> {
   try {
     return (await response.json()) as Problem;
   } catch {
-    return { type: 'about:blank', title: 'Something went wrong', status: response.status, detail: 'The server did not answer as expected. Try again.', requestId: '' };
+    return {
+      type: 'about:blank',
+      title: 'Something went wrong',
+      status: response.status,
+      detail: 'The server did not answer as expected. Try again.',
+      requestId: '',
+    };
   }
 }

@@ -49,14 +49,22 @@ export type OperationInput<O extends Operation> = {
 export type OperationReply<O extends Operation> = z.infer<O['reply']>;
 
 /** Keeps the literal types of a declaration. */
-export function defineOperation<const A extends Access, P extends z.ZodType, Q extends z.ZodType, B extends z.ZodType, R extends z.ZodType>(
-  operation: Operation<A, P, Q, B, R>,
-): Operation<A, P, Q, B, R> {
+export function defineOperation<
+  const A extends Access,
+  P extends z.ZodType,
+  Q extends z.ZodType,
+  B extends z.ZodType,
+  R extends z.ZodType,
+>(operation: Operation<A, P, Q, B, R>): Operation<A, P, Q, B, R> {
   return operation;
 }
 
-export function defineUpload<const A extends Access, P extends z.ZodType, Q extends z.ZodType, B extends z.ZodType, R extends z.ZodType>(
-  operation: Operation<A, P, Q, B, R> & { upload: 'file' },
-): Operation<A, P, Q, B, R> & { upload: 'file' } {
+export function defineUpload<
+  const A extends Access,
+  P extends z.ZodType,
+  Q extends z.ZodType,
+  B extends z.ZodType,
+  R extends z.ZodType,
+>(operation: Operation<A, P, Q, B, R> & { upload: 'file' }): Operation<A, P, Q, B, R> & { upload: 'file' } {
   return operation;
 }

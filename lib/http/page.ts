@@ -25,14 +25,25 @@ export async function pageActor(): Promise<Actor> {
 }
 
 /** One read of a study's page: permission, then the query, in one transaction. An unknown study is a 404 page. */
-export async function readStudy<A extends StudyAction, T>(code: string, action: A, query: (scope: StudyScope<A>, em: EntityManager) => Promise<T>): Promise<Permitted<T>> {
+export async function readStudy<A extends StudyAction, T>(
+  code: string,
+  action: A,
+  query: (scope: StudyScope<A>, em: EntityManager) => Promise<T>,
+): Promise<Permitted<T>> {
   const actor = await pageActor();
-  return guarded(() => transact({ personId: actor.personId }, async (em) => query(await authoriseStudy(em, actor, code, action), em)));
+  return guarded(() =>
+    transact({ personId: actor.personId }, async (em) => query(await authoriseStudy(em, actor, code, action), em)),
+  );
 }
 
-export async function readOrganisation<A extends OrganisationAction, T>(action: A, query: (scope: OrganisationScope<A>, em: EntityManager) => Promise<T>): Promise<Permitted<T>> {
+export async function readOrganisation<A extends OrganisationAction, T>(
+  action: A,
+  query: (scope: OrganisationScope<A>, em: EntityManager) => Promise<T>,
+): Promise<Permitted<T>> {
   const actor = await pageActor();
-  return guarded(() => transact({ personId: actor.personId }, async (em) => query(await authoriseOrganisation(em, actor, action), em)));
+  return guarded(() =>
+    transact({ personId: actor.personId }, async (em) => query(await authoriseOrganisation(em, actor, action), em)),
+  );
 }
 
 async function guarded<T>(read: () => Promise<T>): Promise<Permitted<T>> {

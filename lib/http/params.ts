@@ -10,4 +10,5 @@ export const pageQuery = z.strictObject({
   page: z.coerce.number().int('Give a whole number.').min(1).max(100_000).default(1),
   size: z.coerce.number().int('Give a whole number.').min(1).max(200).default(50),
 });
-export const paged = <T extends z.ZodType>(item: T) => z.strictObject({ items: z.array(item), page: z.number(), size: z.number(), total: z.number() });
+export const paged = <T extends z.ZodType>(item: T) =>
+  z.strictObject({ items: z.array(item), page: z.number(), size: z.number(), total: z.number() });

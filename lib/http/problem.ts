@@ -45,7 +45,12 @@ function statusOf(error: unknown): number {
   if (error instanceof NotSignedInError) return 401;
   if (error instanceof ForbiddenError) return 403;
   if (error instanceof NotFoundError) return 404;
-  if (error instanceof ConflictError || error instanceof OptimisticLockError || error instanceof UniqueConstraintViolationException) return 409;
+  if (
+    error instanceof ConflictError ||
+    error instanceof OptimisticLockError ||
+    error instanceof UniqueConstraintViolationException
+  )
+    return 409;
   if (error instanceof TooLargeError) return 413;
   if (error instanceof WrongTypeError) return 415;
   if (error instanceof InvalidError) return 422;
@@ -55,7 +60,8 @@ function statusOf(error: unknown): number {
 
 function detailOf(error: unknown, status: number): string {
   if (error instanceof KalendsError) return error.message;
-  if (status === 409) return 'Someone else saved this while you were working on it. Load it again to see what stands now.';
+  if (status === 409)
+    return 'Someone else saved this while you were working on it. Load it again to see what stands now.';
   return 'The request could not be carried out. Nothing was saved. Try again; if it happens again, quote the request number.';
 }
 
@@ -72,7 +78,11 @@ export function problemResponse(error: unknown, requestId: string): Response {
     ...(error instanceof InvalidError ? { errors: error.faults } : {}),
     ...(error instanceof ConflictError && error.current !== null ? { current: error.current } : {}),
   };
-  const headers = new Headers({ 'content-type': 'application/problem+json', 'cache-control': 'no-store', 'x-request-id': requestId });
+  const headers = new Headers({
+    'content-type': 'application/problem+json',
+    'cache-control': 'no-store',
+    'x-request-id': requestId,
+  });
   if (error instanceof TooManyError) headers.set('retry-after', String(error.retryAfterSeconds));
   return new Response(JSON.stringify(problem), { status, headers });
 }
@@ -84,7 +94,10 @@ export function faultsOf(error: z.ZodError, prefix = ''): FieldFault[] {
   return error.issues.flatMap((issue) => {
     const base = prefix + issue.path.map((part) => `/${escapePointer(part)}`).join('');
     if (issue.code === 'unrecognized_keys') {
-      return issue.keys.map((key) => ({ pointer: `${base}/${escapePointer(key)}`, detail: `There is no field called ${key} here. Leave it out.` }));
+      return issue.keys.map((key) => ({
+        pointer: `${base}/${escapePointer(key)}`,
+        detail: `There is no field called ${key} here. Leave it out.`,
+      }));
     }
     return [{ pointer: base, detail: issue.message }];
   });

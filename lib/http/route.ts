@@ -45,7 +45,12 @@ export function route<O extends Operation>(operation: O, handler: Handler<O>) {
       const reply = await transact({ personId: actor?.personId }, async (em) => {
         const scope = await makeScope(em, operation.access, actor, params);
         const input = await readInput(operation, request, params);
-        const context: CommandContext = { em, clock: systemClock, requestId, source: operation.upload ? 'upload' : 'screen' };
+        const context: CommandContext = {
+          em,
+          clock: systemClock,
+          requestId,
+          source: operation.upload ? 'upload' : 'screen',
+        };
         return handler(scope as ScopeOf<O['access']>, input as OperationInput<O>, context);
       });
       return reply instanceof Response ? withRequestId(reply, requestId) : jsonReply(operation, reply, requestId);

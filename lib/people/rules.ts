@@ -15,10 +15,14 @@ export function mayInvite(role: ActingRole, invited: StudyRole): boolean {
 export function passwordFault(password: string, person: { name: string; email: string }): string | null {
   const plain = password.toLowerCase();
   const bare = plain.replace(/[^a-z0-9]/g, '');
-  if (COMMON_PASSWORDS.has(plain) || COMMON_PASSWORDS.has(bare)) return 'This password is one of the first that anyone would try. Choose another.';
+  if (COMMON_PASSWORDS.has(plain) || COMMON_PASSWORDS.has(bare))
+    return 'This password is one of the first that anyone would try. Choose another.';
   if (new Set(plain).size < 5) return 'This password repeats a few characters. Use more different ones.';
-  const own = [person.email.split('@')[0]!, ...person.name.split(/\s+/)].map((part) => part.toLowerCase()).filter((part) => part.length >= 4);
-  if (own.some((part) => plain.replaceAll(part, '').length < 6)) return 'This password is little more than your own name. Choose another.';
+  const own = [person.email.split('@')[0]!, ...person.name.split(/\s+/)]
+    .map((part) => part.toLowerCase())
+    .filter((part) => part.length >= 4);
+  if (own.some((part) => plain.replaceAll(part, '').length < 6))
+    return 'This password is little more than your own name. Choose another.';
   return null;
 }
 

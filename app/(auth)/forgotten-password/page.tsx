@@ -7,7 +7,10 @@ export const metadata: Metadata = { title: 'Forgotten password' };
 export default function ForgottenPasswordPage() {
   return (
     <>
-      <PageHead title="Forgotten password" lead="A link to choose a new one comes by e-mail. It works once, within an hour." />
+      <PageHead
+        title="Forgotten password"
+        lead="A link to choose a new one comes by e-mail. It works once, within an hour."
+      />
       <ForgottenPasswordForm />
     </>
   );

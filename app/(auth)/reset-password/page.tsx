@@ -6,11 +6,18 @@ import { PageHead } from '@/components/ui/page-head';
 
 export const metadata: Metadata = { title: 'New password', referrer: 'no-referrer' };
 
-export default async function ResetPasswordPage({ searchParams }: { searchParams: Promise<{ token?: string; error?: string }> }) {
+export default async function ResetPasswordPage({
+  searchParams,
+}: {
+  searchParams: Promise<{ token?: string; error?: string }>;
+}) {
   const { token, error } = await searchParams;
   if (!token || error) {
     return (
-      <EmptyState title="This link does not work any more" action={<Link href="/forgotten-password">Ask for a new one</Link>}>
+      <EmptyState
+        title="This link does not work any more"
+        action={<Link href="/forgotten-password">Ask for a new one</Link>}
+      >
         <p>It has been used, or it is older than an hour.</p>
       </EmptyState>
     );

@@ -15,7 +15,10 @@ import { listOrganisation } from '@/lib/people/queries';
 export const metadata: Metadata = { title: 'Organisation' };
 
 export default async function OrganisationPage() {
-  const read = await readOrganisation('organisation:read', async (scope, em) => ({ name: scope.organisationName, ...(await listOrganisation(scope, em)) }));
+  const read = await readOrganisation('organisation:read', async (scope, em) => ({
+    name: scope.organisationName,
+    ...(await listOrganisation(scope, em)),
+  }));
   if (!read.permitted) {
     return (
       <PageFrame forecast={false}>
@@ -53,7 +56,8 @@ export default async function OrganisationPage() {
                   <Cell>{study.sponsorName}</Cell>
                   <Cell num>{study.people}</Cell>
                   <Cell>
-                    <Link href={`/studies/${study.code}/people`}>People</Link> · <Link href={`/studies/${study.code}/audit`}>Audit</Link>
+                    <Link href={`/studies/${study.code}/people`}>People</Link> ·{' '}
+                    <Link href={`/studies/${study.code}/audit`}>Audit</Link>
                   </Cell>
                 </Row>
               ))}

@@ -29,7 +29,11 @@ export default async function InvitationPage({ params }: { params: Promise<{ tok
         title={invitation.studyTitle ?? invitation.organisationName}
         lead={`You are invited as ${invitation.roleName}, with the address ${invitation.email}.`}
       />
-      {invitation.hasAccount ? <JoinForm token={token} email={invitation.email} signedInAs={actor?.email ?? null} /> : <AcceptInvitationForm token={token} name={invitation.name} email={invitation.email} />}
+      {invitation.hasAccount ? (
+        <JoinForm token={token} email={invitation.email} signedInAs={actor?.email ?? null} />
+      ) : (
+        <AcceptInvitationForm token={token} name={invitation.name} email={invitation.email} />
+      )}
     </>
   );
 }

@@ -15,9 +15,17 @@ export const metadata: Metadata = { title: 'Audit' };
 
 type Search = Record<string, string | undefined>;
 
-export default async function AuditPage({ params, searchParams }: { params: Promise<{ code: string }>; searchParams: Promise<Search> }) {
+export default async function AuditPage({
+  params,
+  searchParams,
+}: {
+  params: Promise<{ code: string }>;
+  searchParams: Promise<Search>;
+}) {
   const { code } = await params;
-  const typed = Object.fromEntries(Object.entries(await searchParams).filter(([, value]) => typeof value === 'string' && value !== ''));
+  const typed = Object.fromEntries(
+    Object.entries(await searchParams).filter(([, value]) => typeof value === 'string' && value !== ''),
+  );
   const parsed = auditQuery.safeParse(typed);
   const query = parsed.success ? parsed.data : auditQuery.parse({});
   const read = await readStudy(code, 'audit:read', (scope, em) => listAudit(scope, { query }, { em }));
@@ -36,8 +44,18 @@ export default async function AuditPage({ params, searchParams }: { params: Prom
           {parsed.error.issues.map((issue) => issue.message).join(' ')}
         </Notice>
       )}
-      {items.length === 0 ? <EmptyState title="No entry matches">Widen the dates or leave the person out.</EmptyState> : <AuditTable entries={items} />}
-      <Pagination page={page} pageSize={size} total={total} things="entries" hrefOf={(to) => `?${new URLSearchParams({ ...typed, page: String(to) })}`} />
+      {items.length === 0 ? (
+        <EmptyState title="No entry matches">Widen the dates or leave the person out.</EmptyState>
+      ) : (
+        <AuditTable entries={items} />
+      )}
+      <Pagination
+        page={page}
+        pageSize={size}
+        total={total}
+        things="entries"
+        hrefOf={(to) => `?${new URLSearchParams({ ...typed, page: String(to) })}`}
+      />
     </>
   );
 }
