@@ -1,3 +1,4 @@
+import type { BetterAuthOptions } from 'better-auth';
 import { type CleanedWhere, createAdapterFactory } from 'better-auth/adapters';
 import { type EntityManager, type FilterQuery, LockMode } from '@mikro-orm/postgresql';
 
@@ -109,21 +110,23 @@ export function mikroOrmAdapter(getManager: () => EntityManager) {
       }) as Promise<T | null>;
     },
   });
-  return createAdapterFactory({
-    config: {
-      ...config,
-      transaction: (callback) =>
-        getManager().transactional((trx) =>
-          callback(
-            createAdapterFactory({
-              config: { ...config, transaction: false },
-              adapter: storage(() => trx as EntityManager),
-            })({}),
+  return (options: BetterAuthOptions) =>
+    createAdapterFactory({
+      config: {
+        ...config,
+        // Inside a transaction every call works on its EntityManager, and a further one joins it.
+        transaction: (callback) =>
+          getManager().transactional((trx) =>
+            callback(
+              createAdapterFactory({
+                config: { ...config, transaction: false },
+                adapter: storage(() => trx as EntityManager),
+              })(options),
+            ),
           ),
-        ),
-    },
-    adapter: storage(getManager),
-  });
+      },
+      adapter: storage(getManager),
+    })(options);
 }
 
 interface FindMany {
