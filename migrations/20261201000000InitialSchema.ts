@@ -213,7 +213,7 @@ create table audit_entry (
   foreign key (organisation_id, study_id) references study (organisation_id, id) deferrable initially deferred);
 create index audit_entry_study on audit_entry (organisation_id, study_id, sequence desc);
 
-create function chain_audit_entry() returns trigger language plpgsql as $$
+create function chain_audit_entry() returns trigger language plpgsql security definer set search_path = public as $$
 declare head audit_head%rowtype;
 begin
   insert into audit_head (organisation_id, sequence, digest) values (new.organisation_id, 0, repeat('0', 64)) on conflict do nothing;
@@ -258,5 +258,5 @@ end $$;
 grant usage on schema public to kalends_app;
 grant select, insert, update, delete on all tables in schema public to kalends_app;
 revoke delete on organisation, study, site, site_month, forecast_run, mail_message, invitation, person from kalends_app;
-revoke insert, update, delete on mikro_orm_migrations from kalends_app;
+revoke insert, update, delete on mikro_orm_migrations, audit_head from kalends_app;
 `;
