@@ -106,6 +106,7 @@ create table site (
   check (planned_earliest <= planned_likely and planned_likely <= planned_latest), check (closed_on >= activated_on),
   unique (organisation_id, id), unique (organisation_id, study_id, code),
   foreign key (organisation_id, study_id) references study (organisation_id, id) deferrable initially deferred);
+create unique index site_code on site (organisation_id, study_id, lower(code));
 create table study_member (
   id uuid primary key, organisation_id uuid not null, study_id uuid not null, person_id uuid not null references person (id) deferrable initially deferred,
   role text not null check (role in ('statistician', 'manager', 'coordinator', 'sponsor')), site_id uuid, created_at timestamptz not null,
