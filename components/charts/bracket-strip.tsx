@@ -18,7 +18,12 @@ import { useElementWidth } from '@/components/charts/use-element-width';
 import type { IsoDate } from '@/lib/engine/types';
 import { formatDate } from '@/lib/format';
 
-const ROW = 38;
+/** Under this width a row's words stand on a line of their own over its bracket. */
+const STACKED_BELOW = 460;
+
+function rowMeasures(width: number): { stacked: boolean; row: number; first: number } {
+  return width < STACKED_BELOW ? { stacked: true, row: 50, first: 32 } : { stacked: false, row: 38, first: 16 };
+}
 
 function stripScale(axis: StripAxis, width: number): TimeScale {
   return timeScale(startOfDay(axis.from), startOfDay(axis.to), 0, width);
@@ -62,7 +67,17 @@ export function StripAxisHead({ axis, today }: { axis: StripAxis; today: IsoDate
   );
 }
 
-function StripRow({ milestone, y, scale }: { milestone: StripMilestone; y: number; scale: TimeScale }) {
+function StripRow({
+  milestone,
+  y,
+  scale,
+  stacked,
+}: {
+  milestone: StripMilestone;
+  y: number;
+  scale: TimeScale;
+  stacked: boolean;
+}) {
   const { forecast, name, plannedOn, kind } = milestone;
   const tone = toneOf(kind);
   const at = (on: IsoDate): number => Math.min(scale.right, Math.max(scale.left, scale.x(endOfDay(on))));
@@ -94,9 +109,9 @@ function StripRow({ milestone, y, scale }: { milestone: StripMilestone; y: numbe
       {plannedX !== null && <PlannedMark x={plannedX} y={lifted ? y - 10 : y - 1} size={5} />}
       {markX !== null && <PointMark tone={tone} x={markX} y={y - 1} />}
       <text
-        x={px(rightwards ? Math.min(right, Math.max(0, scale.right - width)) : left)}
-        y={y + 4.5}
-        textAnchor={rightwards ? 'start' : 'end'}
+        x={px(stacked ? 0 : rightwards ? Math.min(right, Math.max(0, scale.right - width)) : left)}
+        y={stacked ? y - 17 : y + 4.5}
+        textAnchor={stacked || rightwards ? 'start' : 'end'}
         className="rimmed"
       >
         <tspan className="strong">{name}</tspan>
@@ -121,7 +136,8 @@ interface BracketStripProps {
 export function BracketStrip({ axis, today, milestones }: BracketStripProps) {
   const [box, width] = useElementWidth<HTMLDivElement>(620);
   const scale = stripScale(axis, width);
-  const height = Math.max(1, milestones.length) * ROW + 6;
+  const { stacked, row, first } = rowMeasures(width);
+  const height = Math.max(1, milestones.length) * row + 6;
   const todayX = scale.x(endOfDay(today));
   const words = milestones.map(({ name, forecast, plannedOn }) => {
     const dates = forecast
@@ -155,7 +171,13 @@ export function BracketStrip({ axis, today, milestones }: BracketStripProps) {
         className="figure-sheet relative"
       >
         {milestones.map((milestone, place) => (
-          <StripRow key={milestone.code} milestone={milestone} y={16 + ROW * place} scale={scale} />
+          <StripRow
+            key={milestone.code}
+            milestone={milestone}
+            y={first + row * place}
+            scale={scale}
+            stacked={stacked}
+          />
         ))}
       </svg>
     </div>

@@ -84,10 +84,13 @@ function lastDay(data: FigureData, from: number, room: number, labelled: boolean
   if (!labelled) return plain;
   // Where a date is written right of its bracket, the axis runs on until it fits, but never by more than a third.
   const needs = data.milestones.flatMap((milestone) => {
+    const before = data.earlier?.milestones.find((other) => other.code === milestone.code)?.quantiles['0.9'] ?? '';
     const on = milestone.reachedOn ?? milestone.quantiles['0.9'];
     if (on === null) return [];
-    const text = textWidth(milestoneWords(milestone).range, true) + 20;
-    return text >= room ? [] : [from + ((endOfDay(on) - from) * room) / (room - text)];
+    const end = endOfDay(on > before ? on : before);
+    const text =
+      textWidth(milestoneWords(milestone).range, true) + 20 + (data.earlier ? 7 * data.earlier.label.length : 0);
+    return text >= room ? [] : [from + ((end - from) * room) / (room - text)];
   });
   return Math.min(Math.max(plain, ...needs), from + (plain - from) * 1.33);
 }

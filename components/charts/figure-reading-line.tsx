@@ -12,7 +12,7 @@ export function FigureReadingMark({ reading, layout }: { reading: Reading; layou
   if (x > frame.scale.right + 1) return null;
   return (
     <g aria-hidden="true">
-      <path d={`M${px(x)} 26V${(events ?? patients).base}`} className="readline" />
+      <path d={`M${px(x)} 44V${(events ?? patients).base}`} className="readline" />
       <g className="tone-randomised">
         <PointMark tone="randomised" x={x} y={patients.y(reading.randomised.median)} size={4} open />
       </g>

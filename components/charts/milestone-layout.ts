@@ -129,7 +129,8 @@ function placeLabel(
   const width = Math.max(
     ...lines.map((line, place) => textWidth(line, place === 0) + (place === lines.length - 1 ? marksWidth : 0)),
   );
-  const start = bracket && !bracket.open ? bracket.to + 8 : (markX ?? scale.right) + 10;
+  const earlierEnd = earlier ? (bracketOf(earlier.milestone, frame)?.to ?? 0) : 0;
+  const start = bracket && !bracket.open ? Math.max(bracket.to, earlierEnd) + 8 : (markX ?? scale.right) + 10;
   const end = bracket ? bracket.from - 8 : (markX ?? scale.right) - 10;
   const down = bracket ? y + 16 : y + 18;
 

@@ -17,43 +17,45 @@ export interface ProbabilityChartProps {
 export function ProbabilityChart({ points, wished, xLabel, description }: ProbabilityChartProps) {
   const tick = { fill: 'var(--ink-soft)', fontSize: 13 };
   return (
-    <div role="img" aria-label={description} className="h-60 text-13">
-      <ResponsiveContainer width="100%" height="100%">
-        <LineChart data={[...points]} margin={{ top: 12, right: 12, bottom: 24, left: 0 }} accessibilityLayer={false}>
-          <CartesianGrid vertical={false} stroke="var(--rule)" />
-          <XAxis
-            dataKey="x"
-            type="number"
-            domain={['dataMin', 'dataMax']}
-            allowDecimals={false}
-            tick={tick}
-            stroke="var(--rule-strong)"
-            label={{ value: xLabel, position: 'insideBottomRight', offset: -14, fill: 'var(--ink-soft)', fontSize: 13 }}
-          />
-          <YAxis
-            domain={[0, 1]}
-            ticks={[0, 0.5, 1]}
-            tickFormatter={(share: number) => formatPercent(share)}
-            tick={tick}
-            tickLine={false}
-            axisLine={false}
-            width={56}
-          />
-          <ReferenceLine
-            y={wished}
-            stroke="var(--ink)"
-            label={{ value: formatPercent(wished), position: 'insideTopLeft', fill: 'var(--ink)', fontSize: 13 }}
-          />
-          <Line
-            dataKey="probability"
-            stroke="var(--patients)"
-            strokeWidth={1.5}
-            isAnimationActive={false}
-            activeDot={false}
-            dot={{ r: 3, fill: 'var(--paper)', stroke: 'var(--patients)' }}
-          />
-        </LineChart>
-      </ResponsiveContainer>
+    <div>
+      <div role="img" aria-label={description} className="h-60 text-13">
+        <ResponsiveContainer width="100%" height="100%">
+          <LineChart data={[...points]} margin={{ top: 12, right: 12, bottom: 0, left: 0 }} accessibilityLayer={false}>
+            <CartesianGrid vertical={false} stroke="var(--rule)" />
+            <XAxis
+              dataKey="x"
+              type="number"
+              domain={['dataMin', 'dataMax']}
+              allowDecimals={false}
+              tick={tick}
+              stroke="var(--rule-strong)"
+            />
+            <YAxis
+              domain={[0, 1]}
+              ticks={[0, 0.5, 1]}
+              tickFormatter={(share: number) => formatPercent(share)}
+              tick={tick}
+              tickLine={false}
+              axisLine={false}
+              width={56}
+            />
+            <ReferenceLine
+              y={wished}
+              stroke="var(--ink)"
+              label={{ value: formatPercent(wished), position: 'insideTopLeft', fill: 'var(--ink)', fontSize: 13 }}
+            />
+            <Line
+              dataKey="probability"
+              stroke="var(--patients)"
+              strokeWidth={1.5}
+              isAnimationActive={false}
+              activeDot={false}
+              dot={{ r: 3, fill: 'var(--paper)', stroke: 'var(--patients)' }}
+            />
+          </LineChart>
+        </ResponsiveContainer>
+      </div>
+      <p className="text-right text-13 text-ink-soft">{xLabel}</p>
     </div>
   );
 }

@@ -24,12 +24,13 @@ export function StudyRail({ code, title, items }: StudyRailProps) {
       <p className="font-title text-24 font-500">{code}</p>
       <p className="hidden text-ink-soft md:mb-5 md:block">{title}</p>
       <ul className="-mx-4 flex gap-5 overflow-x-auto border-y border-rule px-4 md:mx-0 md:block md:overflow-visible md:border-y-0 md:px-0">
-        {items.map((item) => (
+        {items.map((item, place) => (
           <li
             key={item.href}
             className={joinClasses(
-              'flex-none md:border-t md:border-rule md:last:border-b',
-              item.current && 'md:border-y-2 md:border-ink md:last:border-b-2 md:[&+li]:border-t-0',
+              'flex-none',
+              item.current ? 'md:border-y-2 md:border-ink' : 'md:border-t md:border-rule md:last:border-b',
+              items[place - 1]?.current && 'md:border-t-0',
             )}
           >
             <Link

@@ -19,7 +19,7 @@ export function ThemeSwitch() {
       onClick={turn}
       aria-label="Switch between light and dark"
       title="Light or dark"
-      className="-m-1.5 p-1.5 screen-only"
+      className="-m-1.5 self-center p-1.5 screen-only"
     >
       <svg viewBox="0 0 14 14" width="14" height="14" aria-hidden="true" className="block">
         <rect x="0.75" y="0.75" width="12.5" height="12.5" fill="none" stroke="currentColor" strokeWidth="1.5" />

@@ -53,4 +53,4 @@ export function Field({ id: givenId, label, hint, error, labelHidden = false, cl
 export const CONTROL_LOOK =
   'block w-full min-h-11 rounded border border-rule-strong bg-paper px-2.5 py-2 text-18 text-ink md:min-h-10 md:text-15 ' +
   'aria-invalid:border-stop aria-invalid:outline aria-invalid:outline-stop aria-invalid:focus-visible:outline-2 aria-invalid:focus-visible:outline-ink ' +
-  'disabled:cursor-not-allowed disabled:bg-paper-sunk disabled:text-ink-soft read-only:bg-paper-sunk';
+  'disabled:cursor-not-allowed disabled:bg-paper-sunk disabled:text-ink-soft [&[readonly]]:bg-paper-sunk';

@@ -31,7 +31,7 @@ export function NumberField({
       {(wiring) => (
         <span
           className={joinClasses(
-            'flex rounded border border-rule-strong bg-paper has-[:disabled]:bg-paper-sunk has-[:read-only]:bg-paper-sunk',
+            'flex rounded border border-rule-strong bg-paper has-[input:disabled]:bg-paper-sunk has-[input[readonly]]:bg-paper-sunk',
             'has-[:focus-visible]:outline-2 has-[:focus-visible]:outline-offset-2 has-[:focus-visible]:outline-ink',
             wiring['aria-invalid'] && 'border-stop outline outline-stop',
           )}

@@ -60,7 +60,8 @@ export function HeadCell({ num = false, className, ...rest }: ComponentProps<'th
   );
 }
 
-const CELL = 'border-b border-rule px-2.5 py-[9px] align-baseline in-[.table-dense]:py-[5px] in-[tfoot]:border-b-0';
+const CELL =
+  'border-b border-rule px-2.5 py-[9px] align-baseline in-[.table-dense]:py-[5px] in-[tfoot]:border-b-0 in-[tfoot]:font-600';
 
 export function RowHead({ num = false, className, ...rest }: ComponentProps<'th'> & CellProps) {
   return (
