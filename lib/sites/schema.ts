@@ -18,6 +18,11 @@ const ONE_LINE = /^[^\p{Cc}]*$/u;
 
 export const siteParams = studyParams.extend({ site: z.string().max(40) });
 
+/** The study file's own range. */
+const siteDate = isoDate
+  .refine((date) => date >= '1990-01-01' && date <= '2100-12-31', 'Give a day between 1990 and 2100.')
+  .nullable();
+
 const text = (what: string) =>
   z
     .string()
@@ -39,11 +44,11 @@ export const siteShape = {
     .trim()
     .toUpperCase()
     .refine(isCountryCode, 'Choose a country. In files: its two letters, for example PL.'),
-  plannedEarliest: isoDate.nullable(),
-  plannedLikely: isoDate.nullable(),
-  plannedLatest: isoDate.nullable(),
-  activatedOn: isoDate.nullable(),
-  closedOn: isoDate.nullable(),
+  plannedEarliest: siteDate,
+  plannedLikely: siteDate,
+  plannedLatest: siteDate,
+  activatedOn: siteDate,
+  closedOn: siteDate,
   cap: z
     .number('Give a whole number.')
     .int('Whole numbers only.')
