@@ -1,4 +1,4 @@
-import { beforeAll, beforeEach, describe, expect, it } from 'vitest';
+import { beforeAll, describe, expect, it } from 'vitest';
 import { PATCH as correctRoute, PUT as logRoute } from '@/app/api/v1/studies/[code]/log/[site]/[month]/route';
 import { GET as sheetRoute } from '@/app/api/v1/studies/[code]/log/[site]/route';
 import { GET as overviewRoute } from '@/app/api/v1/studies/[code]/log/route';
@@ -285,7 +285,6 @@ describe('what the log knows for a forecast', () => {
     await put('2026-05', { screened: 1 });
     await put('2026-06', { ...zeros, randomised: 2 });
   });
-  beforeEach(() => expect(own).toBeDefined());
 
   it('months up to the cut-off’s last whole month, gaps named, a figure not reported being a gap', async () => {
     const [site, silent] = await as((scope, { em }) => loggedEnrolment(em, scope, '2026-06-30'));
