@@ -24,6 +24,16 @@ const newsreaderExt = localFont({
   declarations: [{ prop: 'unicode-range', value: LATIN_EXT }],
 });
 
+/** For the letters of formulas; fetched only where one stands. */
+const newsreaderItalic = localFont({
+  src: '../fonts/newsreader-latin-italic.woff2',
+  weight: '200 800',
+  style: 'italic',
+  variable: '--font-newsreader-italic',
+  adjustFontFallback: false,
+  preload: false,
+});
+
 const publicSans = localFont({
   src: '../fonts/public-sans-latin.woff2',
   weight: '100 900',
@@ -40,6 +50,6 @@ const publicSansExt = localFont({
   declarations: [{ prop: 'unicode-range', value: LATIN_EXT }],
 });
 
-export const fontClasses = [newsreader, newsreaderExt, publicSans, publicSansExt]
+export const fontClasses = [newsreader, newsreaderExt, newsreaderItalic, publicSans, publicSansExt]
   .map((font) => font.variable)
   .join(' ');
