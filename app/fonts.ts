@@ -3,11 +3,9 @@ import localFont from 'next/font/local';
 /*
  * Each family comes in two files, so that a page in English does not fetch the accents of Central Europe. The second
  * has a name of its own, and `app/globals.css` lists it after the first; no fallback is adjusted into the first, or a
- * system face would draw an "ń" before the right one were asked.
+ * system face would draw an "ń" before the right one were asked. The compiler reads these calls without running them, so
+ * the ranges are written out.
  */
-const LATIN_EXT =
-  'U+0100-02BA, U+02BD-02C5, U+02C7-02CC, U+02CE-02D7, U+02DD-02FF, U+1D00-1DBF, U+1E00-1E9F, U+1EF2-1EFF, U+2020, U+20A0-20AB, U+20AD-20C0, U+2113, U+2C60-2C7F, U+A720-A7FF';
-
 const newsreader = localFont({
   src: '../fonts/newsreader-latin.woff2',
   weight: '200 800',
@@ -21,7 +19,13 @@ const newsreaderExt = localFont({
   variable: '--font-newsreader-ext',
   adjustFontFallback: false,
   preload: false,
-  declarations: [{ prop: 'unicode-range', value: LATIN_EXT }],
+  declarations: [
+    {
+      prop: 'unicode-range',
+      value:
+        'U+0100-02BA, U+02BD-02C5, U+02C7-02CC, U+02CE-02D7, U+02DD-02FF, U+1D00-1DBF, U+1E00-1E9F, U+1EF2-1EFF, U+2020, U+20A0-20AB, U+20AD-20C0, U+2113, U+2C60-2C7F, U+A720-A7FF',
+    },
+  ],
 });
 
 /** For the letters of formulas; fetched only where one stands. */
@@ -47,7 +51,13 @@ const publicSansExt = localFont({
   variable: '--font-public-sans-ext',
   adjustFontFallback: false,
   preload: false,
-  declarations: [{ prop: 'unicode-range', value: LATIN_EXT }],
+  declarations: [
+    {
+      prop: 'unicode-range',
+      value:
+        'U+0100-02BA, U+02BD-02C5, U+02C7-02CC, U+02CE-02D7, U+02DD-02FF, U+1D00-1DBF, U+1E00-1E9F, U+1EF2-1EFF, U+2020, U+20A0-20AB, U+20AD-20C0, U+2113, U+2C60-2C7F, U+A720-A7FF',
+    },
+  ],
 });
 
 export const fontClasses = [newsreader, newsreaderExt, newsreaderItalic, publicSans, publicSansExt]

@@ -1,7 +1,7 @@
 'use client';
 
 import { Dialog as Radix } from 'radix-ui';
-import type { ReactNode } from 'react';
+import { useRef, type ReactNode } from 'react';
 
 export interface DialogProps {
   open: boolean;
@@ -18,6 +18,7 @@ export interface DialogProps {
 
 /** A sheet laid over the page, edged in ink. Escape leaves it; the focus goes back to where it came from. */
 export function Dialog({ open, onOpenChange, title, description, children, actions, trigger }: DialogProps) {
+  const cameFrom = useRef<Element | null>(null);
   return (
     <Radix.Root open={open} onOpenChange={onOpenChange}>
       {trigger && <Radix.Trigger asChild>{trigger}</Radix.Trigger>}
@@ -25,6 +26,14 @@ export function Dialog({ open, onOpenChange, title, description, children, actio
         <Radix.Overlay className="fixed inset-0 z-40 bg-paper-sunk/80" />
         <Radix.Content
           {...(description ? {} : { 'aria-describedby': undefined })}
+          onOpenAutoFocus={() => {
+            cameFrom.current = document.activeElement;
+          }}
+          onCloseAutoFocus={(event) => {
+            if (trigger || !(cameFrom.current instanceof HTMLElement)) return;
+            event.preventDefault();
+            cameFrom.current.focus();
+          }}
           className="fixed top-1/2 left-1/2 z-50 max-h-[90dvh] w-[min(560px,calc(100vw-32px))] -translate-x-1/2 -translate-y-1/2 overflow-y-auto border border-ink bg-paper p-5"
         >
           <Radix.Title className="font-title text-24 font-500">{title}</Radix.Title>
