@@ -8,6 +8,7 @@ import { Toaster } from '@/components/ui/toaster';
 import '@/app/globals.css';
 
 export const metadata: Metadata = {
+  icons: { icon: '/icon.svg' },
   title: { default: 'Kalends', template: '%s · Kalends' },
   description:
     'When will the patients be in, and when the events? Forecasts of a clinical trial’s dates, with their uncertainty.',

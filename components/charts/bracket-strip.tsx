@@ -39,6 +39,7 @@ export function StripAxisHead({ axis, today }: { axis: StripAxis; today: IsoDate
   const leftwards = todayX + textWidth(words) + 6 > width;
   return (
     <div ref={box}>
+      <span className="sr-only">On the calendar</span>
       <svg aria-hidden="true" width={width} height={50} viewBox={`0 0 ${width} 50`} className="figure-sheet">
         {yearLabels(scale).map((label) => (
           <g key={label.year}>

@@ -182,7 +182,8 @@ export function DateHistoryFigure({ publications, plannedOn = null }: DateHistor
             <th scope="col" className="pb-1">
               Published
             </th>
-            <th scope="col" className="p-0" aria-label="On the calendar">
+            <th scope="col" className="p-0">
+              <span className="sr-only">On the calendar</span>
               <HistoryAxis scale={layout.scale} width={stripWidth} />
             </th>
             <th scope="col" className="pb-1 pl-7">

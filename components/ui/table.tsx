@@ -1,5 +1,6 @@
-import type { ComponentProps, ReactNode } from 'react';
+import { useId, type ComponentProps, type ReactNode } from 'react';
 import { joinClasses } from '@/components/ui/join-classes';
+import { ScrollBox } from '@/components/ui/scroll-box';
 
 interface TableProps extends ComponentProps<'table'> {
   /** What the table holds, for those who hear it; drawn above it with `captionShown`. */
@@ -11,16 +12,19 @@ interface TableProps extends ComponentProps<'table'> {
 
 /** A table that reads like one: hairlines, a sunk head, a total under a double rule. It scrolls sideways before it breaks the page. */
 export function Table({ caption, captionShown = false, dense = false, className, children, ...rest }: TableProps) {
+  const captionId = useId();
   return (
-    <div className="relative overflow-x-auto">
+    <ScrollBox labelledBy={captionId}>
       <table
         {...rest}
         className={joinClasses('w-full border-collapse', dense ? 'table-dense text-13' : 'text-15', className)}
       >
-        <caption className={captionShown ? 'pb-2 text-left text-13 text-ink-soft' : 'sr-only'}>{caption}</caption>
+        <caption id={captionId} className={captionShown ? 'pb-2 text-left text-13 text-ink-soft' : 'sr-only'}>
+          {caption}
+        </caption>
         {children}
       </table>
-    </div>
+    </ScrollBox>
   );
 }
 
