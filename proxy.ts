@@ -1,4 +1,5 @@
 import { type NextRequest, NextResponse } from 'next/server';
+import { TOASTER_STYLE_HASHES } from '@/components/ui/toaster-style';
 
 /**
  * Sets each page's content security policy, with a nonce of its own. It decides nothing about access: that is
@@ -11,7 +12,7 @@ export function proxy(request: NextRequest): NextResponse {
     `default-src 'self'`,
     `script-src 'self' 'nonce-${nonce}' 'strict-dynamic'${development ? " 'unsafe-eval'" : ''}`,
     // Inline style attributes carry the charts' measured positions; style elements stay forbidden outside development.
-    `style-src 'self' ${development ? "'unsafe-inline'" : `'nonce-${nonce}'`}`,
+    `style-src 'self' ${development ? "'unsafe-inline'" : [`'nonce-${nonce}'`, ...TOASTER_STYLE_HASHES.map((hash) => `'${hash}'`)].join(' ')}`,
     `style-src-attr 'unsafe-inline'`,
     `img-src 'self' data: blob:`,
     `font-src 'self'`,
