@@ -303,3 +303,14 @@ export async function studyTotalsByMonth(
     return { monthEnd: monthEnd(month), randomised, events };
   });
 }
+
+/** A coordinator's own site; null for everybody else. */
+export async function findOwnSiteCode(scope: StudyScope<'site-log:read'>, em: EntityManager): Promise<string | null> {
+  if (!scope.siteId) return null;
+  const site = await em.findOneOrFail(Site, {
+    organisationId: scope.organisationId,
+    studyId: scope.studyId,
+    id: scope.siteId,
+  });
+  return site.code;
+}
