@@ -2,6 +2,7 @@ import { randomUUID } from 'node:crypto';
 import { betterAuth } from 'better-auth';
 import { getOrm } from '../db/orm';
 import { env } from '../env';
+import { log } from '../log';
 import { mikroOrmAdapter } from './mikro-orm-adapter';
 import { sendResetMail } from './reset-mail';
 import { SESSION_IDLE_SECONDS } from './session-limits';
@@ -44,6 +45,7 @@ function create() {
       ipAddress: { ipAddressHeaders: env().trustedProxyHeader ? [env().trustedProxyHeader] : [] },
       database: { generateId: () => randomUUID() },
     },
+    logger: { level: 'warn', log: (level, message) => log[level]({ part: 'sign-in' }, message) },
     telemetry: { enabled: false },
   });
 }
