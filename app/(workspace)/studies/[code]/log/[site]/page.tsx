@@ -11,7 +11,7 @@ export default async function MonthSheetPage({ params }: { params: Promise<{ cod
   const { code, site } = await params;
   const read = await readStudy(code, 'site-log:read', async (scope, em) => ({
     personId: scope.actor.personId,
-    sheet: await getMonthSheet(scope, { params: { site: decodeURIComponent(site) } }, { em, clock: systemClock }),
+    sheet: await getMonthSheet(scope, { params: { site: site } }, { em, clock: systemClock }),
   }));
   if (!read.permitted) return <NoPermission detail={read.detail} code={code} />;
   const { personId, sheet } = read.data;
