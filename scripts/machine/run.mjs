@@ -1,5 +1,6 @@
 import { spawn } from 'node:child_process';
 import { Refusal } from './speak.mjs';
+import { watch } from './watchman.mjs';
 
 const running = new Set();
 
@@ -16,6 +17,7 @@ export function run(command, args, { env, cwd, input, show = false, acceptFailur
       detached: true,
     });
     running.add(child);
+    const unwatch = child.pid === undefined ? () => {} : watch({ group: child.pid });
     let output = '';
     let stdout = '';
     child.stdout?.setEncoding('utf8').on('data', (text) => {
@@ -29,20 +31,20 @@ export function run(command, args, { env, cwd, input, show = false, acceptFailur
       running.delete(child);
       reject(error.code === 'ENOENT' ? new Refusal(`${command} is not installed.`) : error);
     });
-    child.on('exit', (code, signal) => {
-      // What a daemon keeps open must not hold us: its launcher has ended.
-      setImmediate(() => {
-        running.delete(child);
-        child.stdout?.destroy();
-        child.stderr?.destroy();
-        const result = { code: code ?? 1, signal, stdout, output };
-        if (code === 0 || acceptFailure) resolve(result);
-        else {
-          const tail = output.trim().split('\n').slice(-25).join('\n');
-          reject(new Refusal(`${command} ${args.join(' ')} failed (${signal ?? code})${tail ? `:\n${tail}` : ''}`));
-        }
-      });
-    });
+    const finish = (code, signal) => {
+      if (!running.delete(child)) return;
+      unwatch();
+      child.stdout?.destroy();
+      child.stderr?.destroy();
+      const result = { code: code ?? 1, signal, stdout, output };
+      if (code === 0 || acceptFailure) return resolve(result);
+      const tail = output.trim().split('\n').slice(-25).join('\n');
+      const how = `${command} ${args.join(' ')} failed (${signal ?? code})`;
+      return reject(new Refusal(tail ? `${how}:\n${tail}` : how));
+    };
+    child.on('close', finish);
+    // A daemon that the program has left behind may keep its output open for ever.
+    child.on('exit', (code, signal) => setTimeout(() => finish(code, signal), 1000).unref());
   });
 }
 
