@@ -1,3 +1,5 @@
+'use client';
+
 import type { ComponentProps } from 'react';
 import { buttonLook, type ButtonSize, type ButtonVariant } from '@/components/ui/button-look';
 
