@@ -177,7 +177,7 @@ export function comparePlans(before: Plan, after: Plan): PlanDifference[] {
   const now = new Map(planLines(after).map((line) => [line.field, line]));
   const fields = [...now.keys(), ...[...old.keys()].filter((field) => !now.has(field))];
   return fields
-    .filter((field) => old.get(field)?.value !== now.get(field)?.value)
+    .filter((field) => (old.get(field)?.value ?? NONE) !== (now.get(field)?.value ?? NONE))
     .map((field) => ({
       field,
       label: (now.get(field) ?? old.get(field))!.label,
@@ -214,7 +214,11 @@ export function sameValue(one: unknown, other: unknown): boolean {
 
 /** A short code out of a milestone's name: `Interim analysis` -> `IA`, with a number where that is taken. */
 export function milestoneCode(name: string, taken: readonly string[]): string {
-  const words = name.normalize('NFD').match(/[A-Za-z]+|\d+/g) ?? [];
+  const words =
+    name
+      .normalize('NFD')
+      .replace(/\p{M}/gu, '')
+      .match(/[A-Za-z]+|\d+/g) ?? [];
   const initials = words
     .map((word) => (/\d/.test(word) ? word : word.charAt(0).toUpperCase()))
     .join('')
