@@ -42,7 +42,7 @@ export const isBuilt = () => existsSync('.next/BUILD_ID') && existsSync(WORKER) 
 
 /** Bundles the engine's thread, which the worker and the command line load by its path. */
 export async function buildWorker() {
-  await run('npm', ['run', '--silent', 'build:worker']);
+  await run('npm', ['run', 'build:worker']);
 }
 
 /** Builds the web server's part. The note about the sources is written last, so that a broken build is never taken for one. */

@@ -26,7 +26,13 @@ export function startChild({ name, args, env, logs, patience, talks = false, onD
     child.on('exit', (code, signal) => resolve(signal ?? `code ${code}`));
   }).then((how) => {
     unwatch();
-    const lastLines = () => readFileSync(file, 'utf8').trim().split('\n').slice(-12).join('\n');
+    const lastLines = () =>
+      readFileSync(file, 'utf8')
+        .trim()
+        .split('\n')
+        .slice(-12)
+        .map((line) => line.slice(0, 500))
+        .join('\n');
     const why = `${name} has ended (${how}). Its last lines, from ${file}:\n${lastLines()}`;
     if (!stopped && !isEnding()) onDeath(why);
     return why;
