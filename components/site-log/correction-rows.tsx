@@ -95,7 +95,7 @@ function CorrectedCell({ correction, entry, field, compact }: PartProps & { fiel
       entry[field]
     );
   return (
-    <>
+    <span className="flex items-center justify-end">
       {old}
       <input
         type="text"
@@ -107,9 +107,9 @@ function CorrectedCell({ correction, entry, field, compact }: PartProps & { fiel
         aria-describedby={correction.faults[field] ? `correction-${field}` : undefined}
         value={correction.texts[field] ?? ''}
         onChange={(event) => correction.setText(field, event.target.value)}
-        className={joinClasses(CONTROL_LOOK, 'ml-auto inline-block w-14 text-right md:min-h-8 md:py-0.5')}
+        className={joinClasses(CONTROL_LOOK, 'max-w-14 text-right md:min-h-8 md:py-0.5')}
       />
-    </>
+    </span>
   );
 }
 
@@ -138,6 +138,7 @@ function CorrectionPanel({ correction, entry, compact, onClose }: PartProps & { 
           <NumberField
             key={field}
             whole
+            autoFocus={saved[0] === field}
             label={`${LOG_FIELD_NAMES[field]} in ${formatLongMonth(entry.month)}, was ${entry[field]}`}
             value={correction.texts[field] ?? ''}
             error={faults[field]}

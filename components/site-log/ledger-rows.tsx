@@ -14,7 +14,8 @@ import { LOG_FIELD_NAMES, LOG_FIELDS, type LogField, type MonthEntry } from '@/l
 
 /** The double upright rule of a ledger, before the first figure and before the last column; single on a phone. */
 export const LEDGER_EDGE = 'md:border-l-[3px] md:border-double md:border-rule-strong';
-export const FIGURE_CELL = 'border-l border-rule px-3 text-right max-md:py-0 max-md:pr-2 max-md:pl-0 md:w-[92px]';
+const FIGURE_LOOK = 'border-l border-rule text-right md:w-[92px]';
+export const FIGURE_CELL = `${FIGURE_LOOK} px-3 max-md:py-0 max-md:pr-2 max-md:pl-0`;
 export const figureEdge = (field: LogField): string => joinClasses(FIGURE_CELL, field === LOG_FIELDS[0] && LEDGER_EDGE);
 export const MONTH_CELL = 'px-3 text-left font-400 whitespace-nowrap max-md:px-0';
 const ICON_CELL = 'w-11 text-center';
@@ -134,12 +135,19 @@ export function OpenRow({ state, entry, onCorrect }: Omit<SavedRowProps, 'compac
   const wrong = LOG_FIELDS.filter((field) => state.faults[cellKey(entry.month, field)]);
   return (
     <>
-      <tr className="border-t-2 border-ink">
+      <tr className="border-t-2 border-b border-t-ink border-b-rule">
         <th scope="row" className="px-3 text-left font-title text-18 font-500 whitespace-nowrap">
           {formatMonth(entry.month)}
         </th>
         {LOG_FIELDS.map((field) => (
-          <td key={field} className={joinClasses(figureEdge(field), entry[field] === null && 'p-[3px]')}>
+          <td
+            key={field}
+            className={
+              entry[field] === null
+                ? joinClasses(FIGURE_LOOK, 'p-[3px]', field === LOG_FIELDS[0] && LEDGER_EDGE)
+                : figureEdge(field)
+            }
+          >
             {entry[field] ?? (
               <CellInput state={state} month={entry.month} field={field} className="md:px-[9px] md:py-1" />
             )}

@@ -63,7 +63,7 @@ export function LogOverviewTable({ code, overview }: { code: string; overview: L
 function gapWords({ missing, incomplete }: OverviewRow) {
   const parts = [
     missing > 0 && `${formatQuantity(missing, 'month')} not logged`,
-    incomplete > 0 && `${incomplete} incomplete`,
+    incomplete > 0 && `${formatQuantity(incomplete, 'month')} incomplete`,
   ].filter(Boolean);
   return parts.length > 0 ? (
     <span className="text-caution">{parts.join(', ')}</span>

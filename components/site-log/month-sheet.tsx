@@ -53,7 +53,12 @@ function SheetPage({ code, personId, initial, path, onDevice }: MonthSheetProps 
       {months.length === 0 ? (
         <NothingYet sheet={state.sheet} />
       ) : (
-        <div data-sheet className="md:grid md:grid-cols-12 md:gap-x-8">
+        <div
+          data-sheet
+          className="md:grid md:grid-cols-12 md:gap-x-8"
+          // The month in hand is the one whose cell was last typed into.
+          onFocus={({ target }) => target.dataset.cell && setChosen(target.dataset.cell.slice(0, 7))}
+        >
           <div className="md:col-span-12 lg:col-span-9">
             <DraftNotice state={state} />
             {phone && inHand && <OpenMonthFields state={state} month={inHand} />}

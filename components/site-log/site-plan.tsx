@@ -9,9 +9,9 @@ export function SitePlan({ sheet }: { sheet: MonthSheet }) {
     cumulative += entry.randomised ?? 0;
     return { month: entry.month, cumulative: entry.randomised === null ? null : cumulative };
   });
-  const gaps = months
-    .filter((entry) => entry.cumulative === null && entry.month < (sheet.months.at(-1)?.month ?? ''))
-    .map((entry) => formatLongMonth(entry.month));
+  // The month that is due is not a gap yet.
+  if (months.at(-1)?.cumulative === null) months.pop();
+  const gaps = months.filter((entry) => entry.cumulative === null).map((entry) => formatLongMonth(entry.month));
   if (months.length === 0) return null;
   return (
     <section>

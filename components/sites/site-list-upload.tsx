@@ -30,13 +30,17 @@ export function SiteListUpload({ code }: { code: string }) {
   const accept = useAcceptSiteList(code);
   const router = useRouter();
 
+  // The file chosen last is the one on show, however long an earlier one takes.
+  const latest = useRef<File | null>(null);
   const look = async (file: File): Promise<void> => {
+    latest.current = file;
     setChosen(null);
     setRefusal(null);
     try {
-      setChosen({ file, preview: await preview.mutateAsync(file) });
+      const read = await preview.mutateAsync(file);
+      if (latest.current === file) setChosen({ file, preview: read });
     } catch (error) {
-      setRefusal(refusalOf(file, error));
+      if (latest.current === file) setRefusal(refusalOf(file, error));
     }
   };
   const add = async (file: File): Promise<void> => {

@@ -36,7 +36,8 @@ export function SiteTable({ code, sites, countryNames, onChange }: SiteTableProp
               <b className="mr-1 text-15">{site.code}</b> {site.name}, {site.city}
               <SubLine>
                 {countryNames[site.country] ?? site.country}
-                {site.activatedOn && `, open since ${formatDate(site.activatedOn)}`}
+                {site.activatedOn &&
+                  `, ${site.status === 'closed' ? 'opened' : 'open since'} ${formatDate(site.activatedOn)}`}
               </SubLine>
             </RowHead>
             <Cell className={joinClasses('text-13', site.status === 'overdue' && 'font-600 text-caution')}>
@@ -74,7 +75,7 @@ export function SiteTable({ code, sites, countryNames, onChange }: SiteTableProp
 function MissingMonths({ code, site }: { code: string; site: ListedSite }) {
   const parts = [
     site.monthsMissing > 0 && `${formatQuantity(site.monthsMissing, 'month')} not logged`,
-    site.monthsIncomplete > 0 && `${site.monthsIncomplete} incomplete`,
+    site.monthsIncomplete > 0 && `${formatQuantity(site.monthsIncomplete, 'month')} incomplete`,
   ].filter(Boolean);
   return (
     <Link
