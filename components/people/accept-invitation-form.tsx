@@ -3,6 +3,7 @@
 import { zodResolver } from '@hookform/resolvers/zod';
 import { useForm } from 'react-hook-form';
 import { signIn } from '@/components/people/sign-in-form';
+import { leaveTo } from '@/components/people/leave-to';
 import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
 import { TextField } from '@/components/ui/text-field';
@@ -23,7 +24,7 @@ export function AcceptInvitationForm({ token, name, email }: Props) {
     try {
       await callOperation(acceptInvitationOperation, { params: {}, body });
       await signIn({ email, password: body.password });
-      window.location.assign('/studies');
+      leaveTo('/studies');
     } catch (error) {
       const password = error instanceof ProblemError ? error.fault('/password') : undefined;
       if (password) form.setError('password', { message: password });

@@ -2,6 +2,7 @@
 
 import Link from 'next/link';
 import { useState } from 'react';
+import { leaveTo } from '@/components/people/leave-to';
 import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
 import { callOperation } from '@/lib/http/client';
@@ -31,7 +32,7 @@ export function JoinForm({ token, email, signedInAs }: Props) {
     setError(null);
     try {
       await callOperation(joinOperation, { params: {}, body: { token } });
-      window.location.assign('/studies');
+      leaveTo('/studies');
     } catch (failure) {
       setError((failure as Error).message);
       setPending(false);

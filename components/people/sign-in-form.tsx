@@ -3,6 +3,7 @@
 import Link from 'next/link';
 import { useForm } from 'react-hook-form';
 import { authRequest } from '@/components/people/auth-request';
+import { leaveTo } from '@/components/people/leave-to';
 import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
 import { TextField } from '@/components/ui/text-field';
@@ -24,8 +25,7 @@ export function SignInForm({ next }: { next: string }) {
   const send = handleSubmit(async (credentials) => {
     try {
       await signIn(credentials);
-      // A full load: the signed-in pages are never served from a signed-out cache.
-      window.location.assign(next);
+      leaveTo(next);
     } catch (error) {
       setError('root', { message: (error as Error).message });
     }

@@ -1,5 +1,6 @@
 'use client';
 
+import { leaveTo } from '@/components/people/leave-to';
 import { authRequest } from '@/components/people/auth-request';
 
 export function SignOutButton() {
@@ -7,7 +8,7 @@ export function SignOutButton() {
     try {
       await authRequest('/sign-out', {}, {});
     } finally {
-      window.location.assign('/sign-in');
+      leaveTo('/sign-in');
     }
   };
   return (
