@@ -271,20 +271,4 @@ describe('a site list', () => {
       version: 1,
     });
   });
-
-  it('of five thousand sites is added in one go', async () => {
-    const own = await createScene();
-    const text = [
-      head,
-      ...Array.from(
-        { length: 5000 },
-        (_, place) => `S${place},Clinic ${place},Leith,GB,2027-05-01,2027-05-31,2027-08-29,,,`,
-      ),
-    ].join('\n');
-    const accepted = await own.call(acceptRoute, acceptSiteListOperation, {
-      as: 'manager',
-      file: { name: 'all.csv', text },
-    });
-    expect(accepted.json).toEqual({ added: 5000 });
-  });
 });
