@@ -1,16 +1,21 @@
 import { SitePlanFigure } from '@/components/charts/site-plan-figure';
+import type { SiteMonth } from '@/components/charts/site-plan-layout';
 import { formatLongMonth } from '@/lib/format';
 import type { MonthSheet } from '@/lib/site-log/schema';
 
-/** The site's own enrolment against its plan; a month that is not logged is a gap in the line. */
-export function SitePlan({ sheet }: { sheet: MonthSheet }) {
+/** Randomised since opening at each month's end; null is a gap. The month that is due is none yet, and is left out. */
+function randomisedSoFar({ months }: MonthSheet): SiteMonth[] {
   let cumulative = 0;
-  const months = sheet.months.map((entry) => {
+  const points = months.map((entry) => {
     cumulative += entry.randomised ?? 0;
     return { month: entry.month, cumulative: entry.randomised === null ? null : cumulative };
   });
-  // The month that is due is not a gap yet.
-  if (months.at(-1)?.cumulative === null) months.pop();
+  return points.at(-1)?.cumulative === null ? points.slice(0, -1) : points;
+}
+
+/** The site's own enrolment against its plan; a month that is not logged is a gap in the line. */
+export function SitePlan({ sheet }: { sheet: MonthSheet }) {
+  const months = randomisedSoFar(sheet);
   const gaps = months.filter((entry) => entry.cumulative === null).map((entry) => formatLongMonth(entry.month));
   if (months.length === 0) return null;
   return (
