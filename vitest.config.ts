@@ -1,7 +1,9 @@
 import { configDefaults, defineConfig } from 'vitest/config';
 
 /** Folders whose tests are pure: they start at once, without a database. */
-const PURE = ['engine', 'study-file', 'reference', 'components', 'house'].map((folder) => `tests/${folder}/**`);
+const PURE = ['engine', 'study-file', 'reference', 'components', 'house', 'machine'].map(
+  (folder) => `tests/${folder}/**`,
+);
 const EVERY_TEST = 'tests/**/*.test.{ts,tsx}';
 
 export default defineConfig({

@@ -14,5 +14,12 @@ const server = new S3rver({
   directory: KALENDS_FILES_FOLDER,
   vhostBuckets: false,
 });
+// It lets anybody read who sends no signature at all; uploads are for nobody else on this machine.
+server.middleware.unshift(async (context, next) => {
+  if (context.get('authorization')) return next();
+  context.status = 403;
+  return undefined;
+});
+
 const { port } = await server.run();
 process.send?.({ port });
