@@ -5,7 +5,7 @@ import { readSecrets, startOwnDatabase } from './machine/data-folder.mjs';
 import { atTheEnd, end, live } from './machine/lifecycle.mjs';
 import { lock } from './machine/lock.mjs';
 import { ensureNodeModules } from './machine/node-modules.mjs';
-import { freePort, isFree } from './machine/port.mjs';
+import { reservePort } from './machine/port.mjs';
 import { makeDataFolder } from './machine/postgres.mjs';
 import { run } from './machine/run.mjs';
 import { explain, Refusal, say } from './machine/speak.mjs';
@@ -25,7 +25,7 @@ async function main() {
   const logs = join(data, 'logs');
   makeDataFolder(data);
   atTheEnd(lock(join(data, 'start.lock'), 'Kalends'));
-  const port = await choosePort();
+  const reserved = await choosePort();
   await ensureNodeModules();
   const secrets = readSecrets(data);
   const database = await openDatabase(data, secrets);
@@ -34,7 +34,7 @@ async function main() {
     NODE_ENV: 'production',
     NEXT_TELEMETRY_DISABLED: '1',
     AWS_SDK_JS_NODE_VERSION_SUPPORT_WARNING_DISABLED: 'true',
-    PORT: String(port),
+    PORT: String(reserved.port),
     KALENDS_DATA: data,
     KALENDS_DEMONSTRATION: isDemonstration() ? '1' : '0',
     DATABASE_URL: database.appUrl,
@@ -45,18 +45,22 @@ async function main() {
   };
   await prepare({ ...env, DATABASE_OWNER_URL: database.ownerUrl });
   say('Starting the web server and the queue worker');
-  const address = await startProduct({ env, port, logs });
+  const address = await startProduct({ env, reserved, logs });
   announce(process.env.KALENDS_URL ?? address, data);
 }
 
+/** Kept from now on, because the build that comes before the web server takes a while. */
 async function choosePort() {
   const wished = Number(process.env.PORT || 3000);
-  if (!Number.isInteger(wished) || wished < 1 || wished > 65_535)
+  if (!Number.isInteger(wished) || wished < 1 || wished > 65_535) {
     throw new Refusal('PORT has to be a number from 1 to 65535.');
-  if (await isFree(wished)) return wished;
-  if (process.env.PORT) throw new Refusal(`Port ${wished} is taken. Choose another with PORT, or leave PORT out.`);
-  for (let port = wished + 1; port < wished + 100; port += 1) if (await isFree(port)) return port;
-  return freePort();
+  }
+  const last = process.env.PORT ? wished : Math.min(wished + 100, 65_535);
+  for (let port = wished; port <= last; port += 1) {
+    const reserved = await reservePort(port);
+    if (reserved) return reserved;
+  }
+  throw new Refusal(`Port ${wished} is taken. Choose another with PORT, or leave PORT out.`);
 }
 
 const isDemonstration = () => {

@@ -7,7 +7,7 @@ import { CHROMIUM, ensureChromium } from './machine/debian.mjs';
 import { atTheEnd, live } from './machine/lifecycle.mjs';
 import { isLocked, lock } from './machine/lock.mjs';
 import { ensureNodeModules } from './machine/node-modules.mjs';
-import { freePort } from './machine/port.mjs';
+import { reservePort } from './machine/port.mjs';
 import { ensureDatabase, makeDataFolder } from './machine/postgres.mjs';
 import { run } from './machine/run.mjs';
 import { Refusal, say } from './machine/speak.mjs';
@@ -104,13 +104,13 @@ async function startForBrowser(cluster) {
   const [appUrl, ownerUrl] = [cluster.appUrl(name), cluster.ownerUrl(name)];
   const logs = join(own, 'logs');
   const local = await startLocalServers({ data: own, logs, secrets });
-  const port = await freePort();
+  const reserved = await reservePort(0);
   const env = {
     NODE_ENV: 'production',
     NEXT_TELEMETRY_DISABLED: '1',
     AWS_SDK_JS_NODE_VERSION_SUPPORT_WARNING_DISABLED: 'true',
-    PORT: String(port),
-    KALENDS_URL: `http://127.0.0.1:${port}`,
+    PORT: String(reserved.port),
+    KALENDS_URL: `http://127.0.0.1:${reserved.port}`,
     KALENDS_DATA: own,
     KALENDS_DEMONSTRATION: '1',
     // Every test signs in, from one address; the limit itself is tested on its own.
@@ -134,7 +134,7 @@ async function startForBrowser(cluster) {
   await run(process.execPath, ['--import', 'tsx', 'scripts/seed.ts'], {
     env: { ...env, DATABASE_OWNER_URL: ownerUrl },
   });
-  return { address: await startProduct({ env, port, logs }), env };
+  return { address: await startProduct({ env, reserved, logs }), env };
 }
 
 const readReport = (file) => (existsSync(file) ? JSON.parse(readFileSync(file, 'utf8')) : undefined);

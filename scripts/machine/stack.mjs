@@ -38,8 +38,9 @@ export async function startLocalServers({ data, logs, secrets }) {
 }
 
 /** The web server and the queue worker; done when the web server answers. */
-export async function startProduct({ env, port, logs }) {
+export async function startProduct({ env, reserved: { port, release }, logs }) {
   startWorker({ env, logs });
+  await release();
   const web = start({ name: 'web', args: [NEXT, 'start', '-H', '127.0.0.1', '-p', String(port)], env, logs });
   const address = `http://127.0.0.1:${port}`;
   await waitForAnswer(`${address}/api/health`, web);
@@ -51,7 +52,10 @@ async function waitForAnswer(url, web) {
   void web.gone.then(() => (ended = true));
   for (const until = Date.now() + 60_000; Date.now() < until && !ended; await wait(100)) {
     const answer = await fetch(url, { signal: AbortSignal.timeout(5000) }).catch(() => undefined);
-    if (answer?.ok) return;
+    if (!answer?.ok) continue;
+    // Somebody else may have answered, on a port that ours did not get.
+    await wait(250);
+    if (!ended) return;
   }
   // Where it has ended, that has been said already, with its last lines.
   if (ended) await end(1);
