@@ -2,7 +2,14 @@ import Link from 'next/link';
 import { ButtonLink } from '@/components/ui/button-link';
 import { Mark } from '@/components/ui/mark';
 import { type HeadFigure, PageHead } from '@/components/ui/page-head';
-import { formatDate, formatMonthRange, formatPercent, formatProbability, formatQuantity } from '@/lib/format';
+import {
+  formatCount,
+  formatDate,
+  formatMonthRange,
+  formatPercent,
+  formatProbability,
+  formatQuantity,
+} from '@/lib/format';
 import type { Portfolio, PortfolioOrder } from '@/lib/portfolio/schema';
 
 interface PortfolioHeadProps {
@@ -55,6 +62,14 @@ function standingWords({ stopped, stale }: Portfolio): string {
     .join('; ');
 }
 
+const SMALL = ['No', 'One', 'Two', 'Three', 'Four', 'Five', 'Six', 'Seven', 'Eight', 'Nine', 'Ten', 'Eleven', 'Twelve'];
+
+function titleOf(all: number, forecasts: boolean): string {
+  if (all === 0) return 'Studies';
+  if (all === 1) return 'Your study';
+  return `${SMALL[all] ?? formatCount(all)} studies${forecasts ? ' on one calendar' : ''}`;
+}
+
 export function PortfolioHead({ portfolio, order, isOwner, orderHref }: PortfolioHeadProps) {
   const { all, items } = portfolio;
   const forecasts = items.some((study) => study.published);
@@ -62,16 +77,10 @@ export function PortfolioHead({ portfolio, order, isOwner, orderHref }: Portfoli
   return (
     <PageHead
       path={[{ label: 'Studies' }]}
-      title={
-        all === 0
-          ? 'Studies'
-          : forecasts && all > 1
-            ? `${formatQuantity(all, 'study', 'studies')} on one calendar`
-            : formatQuantity(all, 'study', 'studies')
-      }
+      title={titleOf(all, forecasts)}
       figure={soonestFigure(portfolio)}
       action={
-        (isOwner || all > 1) && (
+        (isOwner || forecasts) && (
           <>
             {isOwner && <ButtonLink href="/organisation">Set up a study</ButtonLink>}
             {forecasts && (
@@ -81,7 +90,7 @@ export function PortfolioHead({ portfolio, order, isOwner, orderHref }: Portfoli
                 {notes && `${notes.charAt(0).toUpperCase()}${notes.slice(1)}.`}
               </p>
             )}
-            {all > 1 && (
+            {all > 1 && forecasts && (
               <ul className="space-y-1 text-13">
                 {(Object.keys(ORDER_WORDS) as PortfolioOrder[])
                   .filter((other) => other !== order)

@@ -31,6 +31,7 @@ export function PortfolioRow({ study, axis, today }: PortfolioRowProps) {
       <td className={joinClasses(CELL, 'relative pt-2.5')}>
         {study.milestones.length > 0 && <BracketStrip axis={axis} today={today} milestones={study.milestones} />}
         {study.site && <SiteLine study={study} />}
+        {study.role === 'owner' && <OwnerLine study={study} />}
       </td>
       <td className={joinClasses(CELL, 'pt-2.5 pb-3 md:pl-4 md:text-right')}>
         <Chance study={study} />
@@ -64,6 +65,11 @@ function StudyLines({ study, today }: { study: PortfolioStudy; today: string }) 
           {stale ? `: ${daysApart(published.dataCutoff, today)} days old` : `, published ${formatDate(published.on)}`}
         </span>
       )}
+      {published && published.cautions > 0 && (
+        <Link href={`/studies/${encodeURIComponent(study.code)}/timeline`} className="block text-caution">
+          {formatQuantity(published.cautions, 'caution')}
+        </Link>
+      )}
       {run && run.status !== 'failed' && <span className="block">Run {run.number} not published</span>}
       {!published && planSavedOn && <span className="block">Plan saved {formatDate(planSavedOn)}</span>}
     </span>
@@ -78,6 +84,15 @@ function SiteLine({ study }: { study: PortfolioStudy }) {
       Site {site.code}, {site.name}, {site.city}.{' '}
       <Link href={`/studies/${encodeURIComponent(study.code)}/log`}>Open the month sheet</Link>
       {site.monthsDue > 0 && <span className="text-caution">, {formatQuantity(site.monthsDue, 'month')} due</span>}
+    </p>
+  );
+}
+
+function OwnerLine({ study }: { study: PortfolioStudy }) {
+  const home = `/studies/${encodeURIComponent(study.code)}`;
+  return (
+    <p className="py-1">
+      For {study.sponsorName}. <Link href={`${home}/people`}>People</Link> · <Link href={`${home}/audit`}>Audit</Link>
     </p>
   );
 }

@@ -93,6 +93,7 @@ interface PublishedRow {
   run_number: number;
   published_on: string;
   data_cutoff: string;
+  cautions: number;
   observed: { randomised: number; events: number | null };
   milestones: MilestoneForecast[];
 }
@@ -123,7 +124,7 @@ const marks = (values: readonly unknown[]): string => values.map(() => '?').join
 /* The weekly densities stay where they are: a bracket needs none, and they are most of a publication's weight. */
 const PUBLISHED_SQL = (count: string): string => `
   select distinct on (p.study_id) p.study_id, p.number, (p.content->>'runNumber')::int as run_number, to_char(p.published_at at time zone 'UTC', 'YYYY-MM-DD') as published_on,
-         p.content->>'dataCutoff' as data_cutoff, p.content->'observed' as observed,
+         p.content->>'dataCutoff' as data_cutoff, coalesce(jsonb_array_length(p.content->'cautions'), 0) as cautions, p.content->'observed' as observed,
          (select coalesce(jsonb_agg((m - 'density') || '{"density": []}'::jsonb), '[]'::jsonb) from jsonb_array_elements(p.content->'milestones') m) as milestones
     from publication p where p.organisation_id = ? and p.study_id in (${count}) order by p.study_id, p.number desc`;
 
@@ -210,7 +211,12 @@ function portfolioRow(study: OwnStudy, { published, plan, run, site }: Known): P
     milestones,
     counts: published ? countsOf(published) : null,
     published: published
-      ? { number: published.number, on: published.published_on, dataCutoff: published.data_cutoff }
+      ? {
+          number: published.number,
+          on: published.published_on,
+          dataCutoff: published.data_cutoff,
+          cautions: published.cautions,
+        }
       : null,
     run:
       run && run.number !== published?.run_number

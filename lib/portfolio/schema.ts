@@ -52,7 +52,7 @@ export const portfolioStudy = z.strictObject({
   next: z.strictObject({ name: z.string(), plannedOn: isoDate, probability: z.number() }).nullable(),
   milestones: z.array(portfolioMilestone),
   counts: z.strictObject({ randomised: countOf, events: countOf.nullable() }).nullable(),
-  published: z.strictObject({ number: z.number(), on: isoDate, dataCutoff: isoDate }).nullable(),
+  published: z.strictObject({ number: z.number(), on: isoDate, dataCutoff: isoDate, cautions: z.number() }).nullable(),
   /** The statistician's own: the latest run, where it is not the published one. */
   run: z.strictObject({ number: z.number(), status: z.enum(RUN_STATUSES), reason: z.string().nullable() }).nullable(),
   planSavedOn: isoDate.nullable(),

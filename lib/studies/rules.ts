@@ -2,8 +2,8 @@ import type { AuditChange } from '../audit/record';
 import { countryName } from '../countries';
 import type { Milestone, MilestoneForecast } from '../engine/types';
 import type { FieldFault } from '../errors';
-import { formatCount, formatDate, formatDecimal, formatPercent, formatProbability, formatQuantity } from '../format';
-import type { Plan, PlanDifference } from './schema';
+import { formatCount, formatDate, formatPercent, formatProbability, formatQuantity } from '../format';
+import type { Plan, PlanDifference, PlanSection } from './schema';
 
 /** Sections as far as they are there, for rules that look across them. */
 export type PartialPlan = { [S in keyof Plan]?: Plan[S] | undefined };
@@ -74,8 +74,8 @@ function enrolmentLines({ enrolment }: Plan): PlanLine[] {
     ...countryRates.map((row) =>
       line(`countryRates.${row.country}`, `Mean rate in ${countryName(row.country)}`, `${row.meanPerMonth} a month`),
     ),
-    ...(seasonality ?? []).map((share, month) =>
-      line(`seasonality.${month + 1}`, `Season, ${MONTH_NAMES[month]}`, `${formatDecimal(share)} of the usual rate`),
+    ...MONTH_NAMES.map((month, place) =>
+      line(`seasonality.${place + 1}`, `Season, ${month}`, `${seasonality?.[place] ?? 1} of the usual rate`),
     ),
     line(
       'rampUp',
@@ -159,31 +159,45 @@ function milestoneLines({ milestones }: Plan): PlanLine[] {
   });
 }
 
-function planLines(plan: Plan): PlanLine[] {
-  const { draws, seed, horizonMonths } = plan.simulation;
+function simulationLines({ simulation: { draws, seed, horizonMonths } }: Plan): PlanLine[] {
   return [
-    ...enrolmentLines(plan),
-    ...milestoneLines(plan),
-    ...eventsLines(plan),
     { field: 'simulation.draws', label: 'Draws', value: formatCount(draws) },
     { field: 'simulation.seed', label: 'Seed', value: String(seed) },
     { field: 'simulation.horizonMonths', label: 'Horizon', value: months(horizonMonths) },
   ];
 }
 
-/** Field by field, in the plan's own order, with both values in words. */
-export function comparePlans(before: Plan, after: Plan): PlanDifference[] {
-  const old = new Map(planLines(before).map((line) => [line.field, line]));
-  const now = new Map(planLines(after).map((line) => [line.field, line]));
-  const fields = [...now.keys(), ...[...old.keys()].filter((field) => !now.has(field))];
-  return fields
-    .filter((field) => (old.get(field)?.value ?? NONE) !== (now.get(field)?.value ?? NONE))
+const SECTION_LINES: Record<PlanSection, (plan: Plan) => PlanLine[]> = {
+  enrolment: enrolmentLines,
+  milestones: milestoneLines,
+  events: eventsLines,
+  simulation: simulationLines,
+};
+
+function differencesOf(before: readonly PlanLine[], after: readonly PlanLine[]): PlanDifference[] {
+  const old = new Map(before.map((line) => [line.field, line]));
+  const now = new Map(after.map((line) => [line.field, line]));
+  return [...new Set([...now.keys(), ...old.keys()])]
     .map((field) => ({
       field,
       label: (now.get(field) ?? old.get(field))!.label,
       old: old.get(field)?.value ?? NONE,
       new: now.get(field)?.value ?? NONE,
-    }));
+    }))
+    .filter((difference) => difference.old !== difference.new);
+}
+
+/** Field by field, in the plan's own order, with both values in words. */
+export function comparePlans(before: Plan, after: Plan): PlanDifference[] {
+  const linesOf = (plan: Plan): PlanLine[] => Object.values(SECTION_LINES).flatMap((lines) => lines(plan));
+  return differencesOf(linesOf(before), linesOf(after));
+}
+
+/** The same for one section; what is not there yet (undefined) has no lines. */
+export function compareSections(section: PlanSection, before: unknown, after: unknown): PlanDifference[] {
+  const linesOf = (value: unknown): PlanLine[] =>
+    value === undefined ? [] : SECTION_LINES[section]({ [section]: value } as unknown as Plan);
+  return differencesOf(linesOf(before), linesOf(after));
 }
 
 /** Every leaf by its path; milestones go by their code and countries by theirs, so that a moved row is no change. */

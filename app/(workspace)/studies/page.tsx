@@ -40,7 +40,7 @@ export default async function StudiesPage({ searchParams }: { searchParams: Prom
         isOwner={isOwner}
         orderHref={(order) => hrefOf({ order })}
       />
-      {all > 0 && <PortfolioFind query={query} legend={items.some((study) => study.milestones.length > 0)} />}
+      {all > 1 && <PortfolioFind query={query} legend={items.some((study) => study.milestones.length > 0)} />}
       {all === 0 && (
         <EmptyState
           title="No study yet is yours"
