@@ -47,13 +47,10 @@ function read(): Env {
   const origin = (values.KALENDS_URL ?? `http://127.0.0.1:${values.PORT}`).replace(/\/$/, '');
   const demonstration = values.KALENDS_DEMONSTRATION === '1';
   const production = values.NODE_ENV === 'production';
-  if (production && values.BETTER_AUTH_SECRET.length < 32)
-    throw new Error('Configuration: BETTER_AUTH_SECRET has to be at least 32 characters of chance.');
-  if (production && demonstration && !/^http:\/\/(127\.0\.0\.1|localhost)(:|$)/.test(origin)) {
-    throw new Error(
-      'Configuration: KALENDS_DEMONSTRATION opens the mailbox page and is refused at any address but this machine’s own.',
-    );
-  }
+  const unsafe = production && whatIsUnsafe({ origin, demonstration, secret: values.BETTER_AUTH_SECRET });
+  if (unsafe) throw new Error(`Configuration: ${unsafe}`);
+  if (values.S3_ENDPOINT && !(values.S3_ACCESS_KEY && values.S3_SECRET_KEY))
+    throw new Error('Configuration: S3_ENDPOINT needs S3_ACCESS_KEY and S3_SECRET_KEY.');
   return {
     production,
     origin,
@@ -77,6 +74,18 @@ function read(): Env {
       secretKey: values.S3_SECRET_KEY,
     },
   };
+}
+
+/** What a server that others reach may not be started with, in one line; nothing when all is well. */
+function whatIsUnsafe(given: { origin: string; demonstration: boolean; secret: string }): string | undefined {
+  const atHome = /^http:\/\/(127\.0\.0\.1|localhost)(:|$)/.test(given.origin);
+  if (given.secret.length < 32 || new Set(given.secret).size < 10)
+    return 'BETTER_AUTH_SECRET has to be at least 32 characters of chance.';
+  if (given.demonstration && !atHome)
+    return 'KALENDS_DEMONSTRATION opens the mailbox page and is refused at any address but this machine’s own.';
+  if (!atHome && !given.origin.startsWith('https://'))
+    return 'KALENDS_URL has to begin with https://, because sign-in travels over it.';
+  return undefined;
 }
 
 let cached: Env | undefined;

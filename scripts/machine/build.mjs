@@ -6,6 +6,7 @@ import { say } from './speak.mjs';
 
 const FOLDERS = ['app', 'components', 'entities', 'fonts', 'lib', 'migrations', 'public'];
 const FILES = [
+  'instrumentation.ts',
   'next.config.ts',
   'package-lock.json',
   'postcss.config.mjs',
