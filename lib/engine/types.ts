@@ -12,13 +12,7 @@ export type IsoMonth = string;
 export type Basis = 'plan' | 'data';
 
 export type Family =
-  | 'exponential'
-  | 'weibull'
-  | 'log-normal'
-  | 'log-logistic'
-  | 'gamma'
-  | 'piecewise-exponential'
-  | 'average';
+  'exponential' | 'weibull' | 'log-normal' | 'log-logistic' | 'gamma' | 'piecewise-exponential' | 'average';
 
 export interface Site {
   code: string;
