@@ -55,9 +55,10 @@ async function getDoneRun(scope: PublishScope, number: number, { em }: CommandCo
   };
   if (!row) return refuse(`There is no run ${number} of ${scope.studyCode}.`);
   const forecast = row.forecast?.unwrap();
-  if (row.status !== 'done' || !forecast)
+  const studyFile = row.studyFile.unwrap();
+  if (row.status !== 'done' || !forecast || !studyFile)
     return refuse(`Run ${number} has no forecast to publish. Choose a run that is done.`);
-  return { row, forecast, studyFile: JSON.parse(row.studyFile.unwrap()) as StudyFile };
+  return { row, forecast, studyFile: JSON.parse(studyFile) as StudyFile };
 }
 
 async function answerAgain(
