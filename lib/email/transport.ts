@@ -35,8 +35,12 @@ export async function sendMail({ to, headers, ...content }: OutgoingMail): Promi
   }
 }
 
-/** Whether the relay refused for good (5xx: a bounce) rather than for now (4xx, or no answer at all). */
+/** What the relay refuses for good is this message; a refused log-in or greeting is ours to mend, and the mail can wait. */
+const ABOUT_THE_MESSAGE = ['EENVELOPE', 'EMESSAGE'];
+
+/** Whether the relay refused the message for good (5xx: a bounce) rather than for now (4xx, or no answer at all). */
 export function isPermanentRefusal(error: unknown): boolean {
-  const code = error instanceof Error && 'responseCode' in error ? error.responseCode : undefined;
-  return typeof code === 'number' && code >= 500 && code <= 599;
+  if (!(error instanceof Error) || !('responseCode' in error) || !('code' in error)) return false;
+  const { responseCode, code } = error;
+  return typeof responseCode === 'number' && responseCode >= 500 && ABOUT_THE_MESSAGE.includes(String(code));
 }
