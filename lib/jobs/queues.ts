@@ -7,10 +7,13 @@ export const QUEUES = {
     payload: z.strictObject({ organisationId: z.uuid(), runId: z.uuid() }),
     options: { expireInSeconds: 900, retryLimit: 5, retryDelay: 1, retryBackoff: false },
   },
-  /** Hands one message to the mail relay. Short, so that a killed worker's mail is soon tried again. */
+  /**
+   * Hands one message to the mail relay. Short, so that a killed worker's mail is soon tried again; tried for half a day, so
+   * that a relay may be down over night.
+   */
   'mail-deliver': {
     payload: z.strictObject({ organisationId: z.uuid(), messageId: z.uuid() }),
-    options: { expireInSeconds: 60, retryLimit: 8, retryDelay: 5, retryBackoff: true },
+    options: { expireInSeconds: 60, retryLimit: 13, retryDelay: 5, retryBackoff: true },
   },
 } as const;
 
