@@ -95,40 +95,46 @@ export function createEnrolmentSimulator(
     showRate(site);
   }
 
+  /** A patient comes to a site; true where that fills it. */
+  function takeRoom(site: number): boolean {
+    const left = (room[site] as number) - 1;
+    room[site] = left;
+    if (left > 0) return false;
+    setRate(tree, site, 0);
+    return true;
+  }
+
   function arrive(stream: number, draw: number): number {
     if (schedule.anyCap) generator.startAt(stream, draw, PURPOSE.arrivalSites);
     let moment = schedule.start;
     let count = 0;
     let nextSwitch = 0;
-    let season = 0;
+    let month = 0;
     let need = exponentials[0] as number;
     for (;;) {
       const switchMoment = nextSwitch < switchAt.length ? (switchAt[nextSwitch] as number) : Infinity;
       const queueMoment = queue.size > 0 ? (queue.moments[0] as number) : Infinity;
-      const seasonMoment = season + 1 < seasonAt.length ? (seasonAt[season + 1] as number) : Infinity;
+      const seasonMoment = month + 1 < seasonAt.length ? (seasonAt[month + 1] as number) : Infinity;
       const until = Math.min(switchMoment, queueMoment, seasonMoment, schedule.horizon);
-      const rate = (tree.sums[1] as number) * (seasonMultiplier[season] as number);
-      const capacity = rate * (until - moment);
-      if (need < capacity) {
-        moment = Math.min(moment + need / rate, until);
+      const season = seasonMultiplier[month] as number;
+      let rate = (tree.sums[1] as number) * season;
+      while (moment + need / rate < until) {
+        moment += need / rate;
         arrivals[count] = moment;
         count += 1;
         if (count === schedule.remaining) return count;
         need = exponentials[count] as number;
-        if (schedule.anyCap) {
-          const site = choosePlace(tree, generator.uniform());
-          const left = (room[site] as number) - 1;
-          room[site] = left;
-          if (left === 0) setRate(tree, site, 0);
+        if (schedule.anyCap && takeRoom(choosePlace(tree, generator.uniform()))) {
+          rate = (tree.sums[1] as number) * season;
         }
-        continue;
       }
-      need -= capacity;
+      // What is left of the exponential is spent at the rates that follow.
+      need = Math.max(0, need - rate * (until - moment));
       moment = until;
       if (until === schedule.horizon) return count;
       if (until === switchMoment) takeSwitch(nextSwitch++);
       else if (until === queueMoment) takeFromQueue();
-      else season += 1;
+      else month += 1;
     }
   }
 

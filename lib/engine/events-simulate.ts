@@ -1,5 +1,6 @@
 import { DAYS_PER_MONTH } from './calendar';
 import type { EventsModel } from './events-model';
+import { ln } from './elementary';
 import { createGammaVariate } from './gamma-variate';
 import { type Generator, PURPOSE, type Purpose } from './generator';
 
@@ -46,7 +47,9 @@ export function createEventsSimulator(
   const months = new Float64Array(size);
   const lost = new Float64Array(size);
   const uniforms = new Float64Array(cureFraction > 0 ? size : 0);
+  const lnElapsed = atRisk.elapsed.map(ln);
   const none = new Float64Array(limits.newSubjects);
+  const lnNone = none.map(ln);
   const parameters = new Float64Array(family.parameterCount);
   const gamma = createGammaVariate(generator);
   let count = 0;
@@ -57,13 +60,14 @@ export function createEventsSimulator(
     purposes: SubjectPurposes,
     randomised: Float64Array,
     elapsed: Float64Array,
+    lnElapsed: Float64Array,
     many: number,
     hazardOfLoss: number,
   ): void {
     if (many === 0) return;
     generator.startAt(stream, draw, purposes.events);
     generator.fillExponential(months, many);
-    family.invert(parameters, elapsed, months, many);
+    family.invert(parameters, elapsed, lnElapsed, months, many);
     if (hazardOfLoss > 0) {
       generator.startAt(stream, draw, purposes.dropout);
       generator.fillExponential(lost, many);
@@ -95,8 +99,8 @@ export function createEventsSimulator(
       generator.startAt(stream, draw, PURPOSE.eventParameters);
       model.source.draw(generator, parameters);
       const hazardOfLoss = dropout.known ?? gamma(dropout.shape, dropout.rate);
-      addEvents(stream, draw, AT_RISK, atRisk.randomised, atRisk.elapsed, present, hazardOfLoss);
-      addEvents(stream, draw, NEW, arrivals, none, arrivalCount, hazardOfLoss);
+      addEvents(stream, draw, AT_RISK, atRisk.randomised, atRisk.elapsed, lnElapsed, present, hazardOfLoss);
+      addEvents(stream, draw, NEW, arrivals, none, lnNone, arrivalCount, hazardOfLoss);
       return count;
     },
   };

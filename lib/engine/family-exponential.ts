@@ -60,7 +60,7 @@ export const exponentialFamily: SurvivalFamily = {
     };
   },
 
-  invert(parameters, elapsed, exponentials, count) {
+  invert(parameters, elapsed, _lnElapsed, exponentials, count) {
     const mean = 1 / (parameters[0] as number);
     for (let place = 0; place < count; place += 1) {
       exponentials[place] = (elapsed[place] as number) + (exponentials[place] as number) * mean;

@@ -119,7 +119,7 @@ export const weibullFamily: SurvivalFamily = {
     return { logEvidence: grid.logIntegral, draw: (generator, out) => drawFromGrid(grid, generator, out) };
   },
 
-  invert(parameters, elapsed, exponentials, count) {
+  invert(parameters, elapsed, lnElapsed, exponentials, count) {
     const lnMedian = parameters[0] as number;
     const shape = exp(parameters[1] as number);
     const perShape = 1 / shape;
@@ -131,7 +131,7 @@ export const weibullFamily: SurvivalFamily = {
         exponentials[place] = exp(lnMedian + ln(added) * perShape);
         continue;
       }
-      const past = exp(shape * (ln(months) - lnMedian));
+      const past = exp(shape * ((lnElapsed[place] as number) - lnMedian));
       // As a multiple of the elapsed time while that is most of the hazard: the result can never fall before it.
       exponentials[place] =
         added < past

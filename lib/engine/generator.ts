@@ -8,7 +8,8 @@
  * Salmon, Moraes, Dror & Shaw 2011, "Parallel random numbers: as easy as 1, 2, 3", SC11 (Philox; passes BigCrush).
  * Blackman & Vigna 2021, "Scrambled linear pseudorandom number generators", ACM TOMS 47:36 (xoshiro128** 1.1).
  */
-import { ln } from './elementary';
+import { EXPONENTIAL_TAIL, exponentialHeights, exponentialWidths } from './exponential-layers';
+import { exp, ln } from './elementary';
 
 const MULTIPLIER_0 = 0xd2511f53;
 const MULTIPLIER_1 = 0xcd9e8d57;
@@ -16,6 +17,8 @@ const WEYL_0 = 0x9e3779b9;
 const WEYL_1 = 0xbb67ae85;
 const TWO_32 = 4_294_967_296;
 const PER_TWO_32 = 1 / TWO_32;
+const WIDTHS = exponentialWidths();
+const HEIGHTS = exponentialHeights(WIDTHS);
 
 /** High 32 bits of the 64-bit product of two unsigned 32-bit numbers. */
 function multiplyHigh(a: number, b: number): number {
@@ -89,7 +92,7 @@ export interface Generator {
   nextWord(): number;
   /** Uniform on (0, 1), the ends excluded, in steps of 2^-32. */
   uniform(): number;
-  /** Exponential with mean 1. */
+  /** Exponential with mean 1, by the ziggurat of Marsaglia & Tsang 2000, J Stat Softw 5(8). */
   exponential(): number;
   /** Fills the first `count` places with uniforms on (0, 1). */
   fillUniform(out: Float64Array, count: number): void;
@@ -134,6 +137,20 @@ export function createGenerator(seed: number): Generator {
     return (nextWord() + 0.5) * PER_TWO_32;
   }
 
+  /** The slow way of a layer: its wedge, or beyond the lowest one the tail, which is exponential again. */
+  function outsideRectangle(layer: number, x: number): number {
+    if (layer === 0) return EXPONENTIAL_TAIL - ln(uniform());
+    const low = HEIGHTS[layer] as number;
+    const high = HEIGHTS[layer + 1] as number;
+    return low + (high - low) * uniform() < exp(-x) ? x : exponential();
+  }
+
+  function exponential(): number {
+    const layer = nextWord() >>> 24;
+    const x = uniform() * (WIDTHS[layer] as number);
+    return x < (WIDTHS[layer + 1] as number) ? x : outsideRectangle(layer, x);
+  }
+
   return {
     startAt(stream, draw, purpose) {
       counter[0] = draw;
@@ -145,12 +162,12 @@ export function createGenerator(seed: number): Generator {
     setState,
     nextWord,
     uniform,
-    exponential: () => -ln(uniform()),
+    exponential,
     fillUniform(out, count) {
       for (let place = 0; place < count; place += 1) out[place] = uniform();
     },
     fillExponential(out, count) {
-      for (let place = 0; place < count; place += 1) out[place] = -ln(uniform());
+      for (let place = 0; place < count; place += 1) out[place] = exponential();
     },
   };
 }

@@ -52,9 +52,16 @@ export interface SurvivalFamily {
    * H(t) = H(elapsed) + e, e exponential with mean 1. In H nothing is lost where S itself is tiny.
    *
    * @param elapsed months already event-free, 0 for a new subject; first `count` places
+   * @param lnElapsed their logarithms, which the families would otherwise take in each draw
    * @param exponentials in its first `count` places the e; overwritten with the times t, each at least `elapsed`
    */
-  invert(parameters: Float64Array, elapsed: Float64Array, exponentials: Float64Array, count: number): void;
+  invert(
+    parameters: Float64Array,
+    elapsed: Float64Array,
+    lnElapsed: Float64Array,
+    exponentials: Float64Array,
+    count: number,
+  ): void;
   /** S(t) of those who are not cured. */
   survival(parameters: Float64Array, months: number): number;
 }
