@@ -5,6 +5,7 @@ import { addDays, addMonths, lastEndedMonth } from '@/lib/dates';
 import { closeOrm, getOrm } from '@/lib/db/orm';
 import { env } from '@/lib/env';
 import { makeOrganisation, makeOwner, makePerson } from '@/scripts/demo/people';
+import { openEmptyStudy, replaySmallStudy } from '@/scripts/demo/studies-small';
 import { type DemoCast, replayLargeStudy } from '@/scripts/demo/study-301';
 
 /** Fills an empty database with the demonstration. A database that has people in it is left alone. */
@@ -24,7 +25,10 @@ async function seed(): Promise<void> {
     owner: await makePerson('Lene Larkfield', 'lene.larkfield@larkfield.example', 'owner', start),
   };
   await makeOwner(organisationId, cast.owner, start);
-  const acts = await replayLargeStudy(cast, lastMonth, now.toISOString());
+  const acts =
+    (await replayLargeStudy(cast, lastMonth, now.toISOString())) +
+    (await replaySmallStudy(cast, lastMonth, now.toISOString()));
+  await openEmptyStudy(cast, now.toISOString());
   const accounts = [cast.statistician, cast.manager, cast.coordinator, cast.sponsor, cast.owner].map(
     (person) => person.account,
   );

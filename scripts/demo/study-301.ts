@@ -1,13 +1,11 @@
-import { act, actAsOwner } from '@/scripts/demo/acting';
 import { generateTrial } from '@/scripts/demo/generate';
 import { giveRole, makePerson, type DemoPerson } from '@/scripts/demo/people';
 import { PlanKeeper } from '@/scripts/demo/plans';
+import { openStudy } from '@/scripts/demo/studies-small';
 import { enterSite, planLogActs, planSiteActs } from '@/scripts/demo/sites';
 import { Timeline } from '@/scripts/demo/timeline';
 import { addDays, addMonths, monthEnd } from '@/lib/dates';
-import { createStudy } from '@/lib/studies/commands';
 import type { Plan } from '@/lib/studies/schema';
-import { Study } from '@/entities/study';
 
 export interface DemoCast {
   organisationId: string;
@@ -61,19 +59,13 @@ export async function replayLargeStudy(cast: DemoCast, lastMonth: string, now: s
     lossPerMonth: 0.004,
   });
   const start = `${addDays(`${trial.months[0]}-01`, -45)}T08:00:00.000Z`;
-  const { organisationId, owner, statistician, manager, coordinator, sponsor } = cast;
+  const { organisationId, statistician, manager, coordinator } = cast;
   const body = {
     code: CODE,
     title: 'Velmorat against placebo in adults with chronic kidney disease',
     sponsorName: 'Orrin & Vale Therapeutics',
   };
-  const studyId = await actAsOwner(owner, 'organisation:create-study', start, async (scope, context) => {
-    await createStudy(scope, { body }, context);
-    return (await context.em.findOneOrFail(Study, { organisationId, code: CODE })).id;
-  });
-  await giveRole(statistician, { organisationId, studyId, role: 'statistician' }, start);
-  await giveRole(manager, { organisationId, studyId, role: 'manager' }, start);
-  await giveRole(sponsor, { organisationId, studyId, role: 'sponsor' }, start);
+  const studyId = await openStudy(cast, body, start);
   const plans = new PlanKeeper(statistician, CODE);
   await plans.save(planOf(lastMonth, 0.008), start);
 
@@ -98,6 +90,5 @@ export async function replayLargeStudy(cast: DemoCast, lastMonth: string, now: s
       'Fewer patients are lost to follow-up than the protocol assumed.',
     ),
   );
-  void act;
   return timeline.play(now);
 }
