@@ -43,7 +43,7 @@ async function main() {
     BETTER_AUTH_SECRET: process.env.BETTER_AUTH_SECRET || secrets.auth,
     ...local,
   };
-  await prepare({ ...env, DATABASE_OWNER_URL: database.ownerUrl });
+  await prepare(env, database);
   say('Starting the web server and the queue worker');
   const address = await startProduct({ env, reserved, logs });
   announce(process.env.KALENDS_URL ?? address, data);
@@ -70,27 +70,30 @@ const isDemonstration = () => {
 
 async function openDatabase(data, secrets) {
   const { DATABASE_URL: appUrl, DATABASE_OWNER_URL: ownerUrl } = process.env;
-  if (appUrl && ownerUrl) return { appUrl, ownerUrl };
+  if (appUrl && ownerUrl) {
+    return { appUrl, filling: { DATABASE_URL: appUrl, DATABASE_OWNER_URL: ownerUrl }, finish: async () => {} };
+  }
   if (appUrl || ownerUrl) {
     throw new Refusal(
       'A database of your own needs both DATABASE_URL (the plain role) and DATABASE_OWNER_URL (the owning role).',
     );
   }
   say('Starting the database');
-  const { cluster, ...urls } = await startOwnDatabase(data, secrets);
+  const { cluster, ...database } = await startOwnDatabase(data, secrets);
   atTheEnd(cluster.stop);
   cluster.supervise((error) => {
     explain(error);
     void end(1);
   });
-  return urls;
+  return database;
 }
 
 /** Schema, demonstration and build; the build beside the other two, because only it takes long. */
-async function prepare(env) {
+async function prepare(env, { filling, finish }) {
   const built = isBuilt();
   if (!built) await buildWorker();
-  await Promise.all([fillDatabase(env), built ? undefined : buildWeb({ ...env, DATABASE_OWNER_URL: '' })]);
+  const fill = fillDatabase({ ...env, ...filling }).then(finish);
+  await Promise.all([fill, built ? undefined : buildWeb(env)]);
 }
 
 async function fillDatabase(env) {

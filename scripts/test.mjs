@@ -8,7 +8,7 @@ import { atTheEnd, live } from './machine/lifecycle.mjs';
 import { isLocked, lock } from './machine/lock.mjs';
 import { ensureNodeModules } from './machine/node-modules.mjs';
 import { reservePort } from './machine/port.mjs';
-import { ensureDatabase, makeDataFolder } from './machine/postgres.mjs';
+import { makeDatabase, makeDataFolder } from './machine/postgres.mjs';
 import { run } from './machine/run.mjs';
 import { Refusal, say } from './machine/speak.mjs';
 import { startLocalServers, startProduct } from './machine/stack.mjs';
@@ -100,7 +100,7 @@ async function startForBrowser(cluster) {
   makeDataFolder(own);
   const secrets = readSecrets(own);
   const name = 'kalends_e2e';
-  await ensureDatabase(cluster, name);
+  await makeDatabase(cluster, name);
   const [appUrl, ownerUrl] = [cluster.appUrl(name), cluster.ownerUrl(name)];
   const logs = join(own, 'logs');
   const local = await startLocalServers({ data: own, logs, secrets });

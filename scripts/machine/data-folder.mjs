@@ -1,7 +1,7 @@
 import { createHash } from 'node:crypto';
 import { existsSync, readFileSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
-import { clusterFolder, ensureDatabase, newPassword, startCluster } from './postgres.mjs';
+import { clusterFolder, hasDatabase, makeDatabase, newPassword, sql, startCluster } from './postgres.mjs';
 
 function readJson(file) {
   return existsSync(file) ? JSON.parse(readFileSync(file, 'utf8')) : {};
@@ -18,8 +18,13 @@ export function readSecrets(data) {
 }
 
 const DATABASE = 'kalends';
+const UNFINISHED = 'kalends_unfinished';
 
-/** The data folder's own database server. Its port is remembered, so that addresses noted down elsewhere stay true. */
+/**
+ * The data folder's own database server. Its port is remembered, so that addresses noted down elsewhere stay true. A first
+ * database is filled under another name and gets its own when it is complete, so that a start that was cut short is
+ * begun again and not taken for done.
+ */
 export async function startOwnDatabase(data, secrets) {
   const note = join(data, 'cluster.json');
   const remembered = readJson(note);
@@ -27,6 +32,18 @@ export async function startOwnDatabase(data, secrets) {
   const folder = remembered.folder ?? (await clusterFolder(data, `/var/lib/kalends/${hash}`));
   const cluster = await startCluster({ folder, passwords: secrets, wishedPort: remembered.port });
   writeFileSync(note, JSON.stringify({ folder, port: cluster.port }, null, 2), { mode: 0o600 });
-  await ensureDatabase(cluster, DATABASE);
-  return { appUrl: cluster.appUrl(DATABASE), ownerUrl: cluster.ownerUrl(DATABASE), cluster };
+  const isFirst = !(await hasDatabase(cluster, DATABASE));
+  if (isFirst) {
+    await sql(cluster.adminUrl, `drop database if exists ${UNFINISHED} with (force)`);
+    await makeDatabase(cluster, UNFINISHED);
+  }
+  const filled = isFirst ? UNFINISHED : DATABASE;
+  return {
+    cluster,
+    appUrl: cluster.appUrl(DATABASE),
+    filling: { DATABASE_URL: cluster.appUrl(filled), DATABASE_OWNER_URL: cluster.ownerUrl(filled) },
+    finish: async () => {
+      if (isFirst) await sql(cluster.adminUrl, `alter database ${UNFINISHED} rename to ${DATABASE}`);
+    },
+  };
 }

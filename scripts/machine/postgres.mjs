@@ -210,10 +210,12 @@ alter role ${OWNER} with login nosuperuser nocreatedb nocreaterole nobypassrls p
 alter role ${APP} with login nosuperuser nocreatedb nocreaterole nobypassrls password '${app}';
 `;
 
+export const hasDatabase = async (cluster, name) =>
+  Boolean(await sql(cluster.adminUrl, `select 1 from pg_database where datname = '${name}'`));
+
 /** A database that belongs to the owner's role and that the plain role may enter; nobody else. */
-export async function ensureDatabase(cluster, name) {
-  const found = await sql(cluster.adminUrl, `select 1 from pg_database where datname = '${name}'`);
-  if (!found) await sql(cluster.adminUrl, `create database ${name} owner ${OWNER}`);
+export async function makeDatabase(cluster, name) {
+  await sql(cluster.adminUrl, `create database ${name} owner ${OWNER}`);
   await sql(
     cluster.adminUrl,
     `revoke all on database ${name} from public; grant connect on database ${name} to ${APP}`,

@@ -1,6 +1,6 @@
 import { tmpdir } from 'node:os';
 import { basename, join } from 'node:path';
-import { clusterFolder, ensureDatabase, makeDataFolder, newPassword, startCluster } from './postgres.mjs';
+import { clusterFolder, makeDatabase, makeDataFolder, newPassword, startCluster } from './postgres.mjs';
 import { run } from './run.mjs';
 import { watch } from './watchman.mjs';
 
@@ -14,7 +14,7 @@ export async function startTestCluster(folder) {
   const unwatchPlace = watch({ folder: place });
   const passwords = { admin: newPassword(), owner: newPassword(), app: newPassword() };
   const cluster = await startCluster({ folder: place, passwords, durable: false });
-  await ensureDatabase(cluster, TEMPLATE);
+  await makeDatabase(cluster, TEMPLATE);
   await migrate(cluster.ownerUrl(TEMPLATE), cluster.appUrl(TEMPLATE));
   return {
     cluster,
