@@ -15,7 +15,7 @@ const FILES = [
   'tsconfig.json',
 ];
 const STAMP = '.next/kalends-sources';
-const WORKER = 'dist/worker/task.mjs';
+const WORKER = 'dist/worker';
 
 function filesIn(folder) {
   return readdirSync(folder, { withFileTypes: true })
