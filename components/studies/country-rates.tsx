@@ -1,18 +1,18 @@
-import type { UseFieldArrayReturn, UseFormReturn } from 'react-hook-form';
+import type { UseFieldArrayReturn } from 'react-hook-form';
 import type { EnrolmentTyped } from '@/components/studies/enrolment-typed';
+import type { PlanSectionForm } from '@/components/studies/use-plan-section';
 import { Button } from '@/components/ui/button';
 import { NumberField } from '@/components/ui/number-field';
 import { SelectField } from '@/components/ui/select-field';
 import { listCountries } from '@/lib/countries';
 
 interface CountryRatesProps {
-  form: UseFormReturn<EnrolmentTyped>;
+  state: PlanSectionForm<EnrolmentTyped>;
   rows: UseFieldArrayReturn<EnrolmentTyped, 'countryRates'>;
 }
 
 /** Countries whose sites are planned to enrol at another mean rate. */
-export function CountryRates({ form, rows }: CountryRatesProps) {
-  const { errors } = form.formState;
+export function CountryRates({ state: { form, errorOf }, rows }: CountryRatesProps) {
   const options = [
     { value: '', label: 'Choose a country' },
     ...listCountries().map(({ code, name }) => ({ value: code, label: name })),
@@ -26,14 +26,14 @@ export function CountryRates({ form, rows }: CountryRatesProps) {
             label="Country"
             labelHidden
             options={options}
-            error={errors.countryRates?.[place]?.country?.message}
+            error={errorOf(`countryRates.${place}.country`)}
             {...form.register(`countryRates.${place}.country`)}
           />
           <NumberField
             label="Mean rate of a site there"
             labelHidden
             unit="a month"
-            error={errors.countryRates?.[place]?.meanPerMonth?.message}
+            error={errorOf(`countryRates.${place}.meanPerMonth`)}
             {...form.register(`countryRates.${place}.meanPerMonth`)}
           />
           <Button variant="quiet" size="small" onClick={() => rows.remove(place)}>

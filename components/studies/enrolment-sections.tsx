@@ -27,8 +27,7 @@ interface EnrolmentSectionsProps {
 /** Steps 2 and 3: one section of the plan under two headings, saved together. */
 export function EnrolmentSections(props: EnrolmentSectionsProps) {
   const { plan, state, folded, onChange, onDone, plannedSites, onPlannedSites } = props;
-  const { form } = state;
-  const { errors } = form.formState;
+  const { form, errorOf } = state;
   const saved = state.savedValue as Plan['enrolment'] | null;
   const countryRows = useFieldArray({ control: form.control, name: 'countryRates' });
   const rampMonths = useWatch({ control: form.control, name: 'rampMonths' });
@@ -54,7 +53,7 @@ export function EnrolmentSections(props: EnrolmentSectionsProps) {
             label="Patients to randomise"
             unit="patients"
             hint="Enrolment stops there."
-            error={errors.target?.message}
+            error={errorOf('target')}
             {...form.register('target')}
           />
           <p className="text-ink-soft sm:col-span-2 sm:pt-6">
@@ -77,43 +76,43 @@ export function EnrolmentSections(props: EnrolmentSectionsProps) {
           <NumberField
             label="Mean rate of a site"
             unit="a month"
-            error={errors.meanPerMonth?.message}
+            error={errorOf('meanPerMonth')}
             {...form.register('meanPerMonth')}
           />
           <NumberField
             label="Spread between sites (CV)"
             hint="0.01: all alike. 0.8 is usual."
-            error={errors.cv?.message}
+            error={errorOf('cv')}
             {...form.register('cv')}
           />
           <SelectField
-            label="The two are"
+            label="The two come"
             options={[
-              { value: 'data', label: 'estimated from the data' },
-              { value: 'plan', label: 'known, as planned' },
+              { value: 'data', label: 'from the data' },
+              { value: 'plan', label: 'as planned' },
             ]}
-            hint="Estimated: the plan gives way as sites log."
-            error={errors.basis?.message}
+            hint="From the data: the plan gives way as sites log."
+            error={errorOf('basis')}
             {...form.register('basis')}
           />
           <NumberField
             label="First months of a site"
             unit="months"
             hint="Empty: full rate from the first day."
-            error={errors.rampMonths?.message}
+            error={errorOf('rampMonths')}
             {...form.register('rampMonths')}
           />
           {rampMonths !== '' && (
             <NumberField
               label="at a share of its rate"
               unit="%"
-              error={errors.rampPercent?.message}
+              error={errorOf('rampPercent')}
               {...form.register('rampPercent')}
             />
           )}
         </div>
-        <CountryRates form={form} rows={countryRows} />
-        <SeasonFields form={form} />
+        <CountryRates state={state} rows={countryRows} />
+        <SeasonFields state={state} />
         <SaveRow state={state} verb="Save target and rates" onDone={onDone} />
       </SectionFrame>
     </>

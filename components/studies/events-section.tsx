@@ -14,8 +14,8 @@ import { SelectField } from '@/components/ui/select-field';
 import { OFFERED_FAMILIES, type Plan } from '@/lib/studies/schema';
 
 const FAMILY_NAMES: Record<(typeof OFFERED_FAMILIES)[number], string> = {
-  exponential: 'exponential: a steady hazard',
-  weibull: 'Weibull: rising or falling',
+  exponential: 'exponential',
+  weibull: 'Weibull',
 };
 
 interface EventsSectionProps {
@@ -54,8 +54,7 @@ export function EventsSection({ state, folded, onChange, onDone }: EventsSection
   );
 }
 
-function EventsFields({ state: { form } }: { state: PlanSectionForm<EventsTyped> }) {
-  const { errors } = form.formState;
+function EventsFields({ state: { form, errorOf } }: { state: PlanSectionForm<EventsTyped> }) {
   const family = useWatch({ control: form.control, name: 'family' });
   const [helping, setHelping] = useState(false);
   return (
@@ -65,7 +64,7 @@ function EventsFields({ state: { form } }: { state: PlanSectionForm<EventsTyped>
           <NumberField
             label="Median time to event"
             unit="months"
-            error={errors.medianMonths?.message}
+            error={errorOf('medianMonths')}
             {...form.register('medianMonths')}
           />
           <Button
@@ -80,16 +79,26 @@ function EventsFields({ state: { form } }: { state: PlanSectionForm<EventsTyped>
         </div>
         <SelectField
           label="Family"
+          hint={family === 'weibull' ? 'A hazard that rises or falls.' : 'A steady hazard.'}
           options={OFFERED_FAMILIES.map((value) => ({ value, label: FAMILY_NAMES[value] }))}
-          error={errors.family?.message}
+          error={errorOf('family')}
           {...form.register('family')}
         />
         {family === 'weibull' && (
           <NumberField
             label="Planned shape"
             hint="1: a steady hazard. Above 1 it rises with time."
-            error={errors.shape?.message}
+            error={errorOf('shape')}
             {...form.register('shape')}
+          />
+        )}
+        {family === 'weibull' && (
+          <NumberField
+            label="Never have the event"
+            unit="%"
+            hint="The median is that of the others."
+            error={errorOf('curePercent')}
+            {...form.register('curePercent')}
           />
         )}
       </div>
@@ -103,41 +112,41 @@ function EventsFields({ state: { form } }: { state: PlanSectionForm<EventsTyped>
       )}
       <div className="mt-5 grid items-start gap-x-3 gap-y-5 sm:grid-cols-3">
         <SelectField
-          label="These are"
+          label="The median comes"
           options={[
-            { value: 'data', label: 'estimated from the data' },
-            { value: 'plan', label: 'known, as planned' },
+            { value: 'data', label: 'from the data' },
+            { value: 'plan', label: 'as planned' },
           ]}
-          hint="Estimated: the plan weighs as below."
-          error={errors.basis?.message}
+          hint="From the data: the plan weighs as beside."
+          error={errorOf('basis')}
           {...form.register('basis')}
         />
         <NumberField
           label="Weight of the plan"
           unit="events"
           hint="How many events the plan’s median counts for. 0: none."
-          error={errors.priorEvents?.message}
+          error={errorOf('priorEvents')}
           {...form.register('priorEvents')}
         />
         <NumberField
           label="Each patient is followed for"
           unit="months"
           hint="Empty: until the study ends."
-          error={errors.followUpMonths?.message}
+          error={errorOf('followUpMonths')}
           {...form.register('followUpMonths')}
         />
         <NumberField
           label="Loss to follow-up"
           unit="% a month"
           hint="0: nobody is lost."
-          error={errors.lossPercent?.message}
+          error={errorOf('lossPercent')}
           {...form.register('lossPercent')}
         />
         <NumberField
           label="Weight of the planned loss"
           unit="patients"
           hint="How many losses the planned one counts for."
-          error={errors.lossPrior?.message}
+          error={errorOf('lossPrior')}
           {...form.register('lossPrior')}
         />
       </div>

@@ -9,6 +9,8 @@ export interface EventsTyped {
   medianMonths: string;
   family: string;
   shape: string;
+  /** Those who never have the event, with the Weibull only. */
+  curePercent: string;
   basis: 'plan' | 'data';
   priorEvents: string;
   lossPercent: string;
@@ -21,6 +23,7 @@ export const EMPTY_EVENTS: EventsTyped = {
   medianMonths: '',
   family: 'exponential',
   shape: '1',
+  curePercent: '0',
   basis: 'data',
   priorEvents: '5',
   lossPercent: '',
@@ -39,6 +42,7 @@ export function eventsTyped(saved: Events | null, isSaved: boolean): EventsTyped
     medianMonths: String(model.medianMonths),
     family: model.family,
     shape: String(model.shape ?? 1),
+    curePercent: asPercent(model.cureFraction ?? 0),
     basis: model.basis,
     priorEvents: String(model.priorEvents),
     lossPercent: asPercent(dropout.perMonth),
@@ -47,17 +51,17 @@ export function eventsTyped(saved: Events | null, isSaved: boolean): EventsTyped
   };
 }
 
-/** Parts that have no field here (a cure fraction, adjudication) stay as they were saved. */
+/** Adjudication has no field here and stays as it was saved. */
 export function eventsValue(typed: EventsTyped, saved: Events | null): unknown {
   if (typed.counted === 'no') return null;
-  const cureFraction = saved?.model.cureFraction;
+  const cureFraction = shareTyped(typed.curePercent) ?? 0;
   const adjudication = saved?.adjudication;
   return {
     model: {
       family: typed.family,
       medianMonths: numberTyped(typed.medianMonths),
       ...(typed.family === 'weibull' && { shape: numberTyped(typed.shape) }),
-      ...(cureFraction !== undefined && { cureFraction }),
+      ...(typed.family === 'weibull' && cureFraction !== 0 && { cureFraction }),
       basis: typed.basis,
       priorEvents: numberTyped(typed.priorEvents),
     },
@@ -75,6 +79,7 @@ const FIELDS: Record<string, string> = {
   'model.family': 'family',
   'model.medianMonths': 'medianMonths',
   'model.shape': 'shape',
+  'model.cureFraction': 'curePercent',
   'model.basis': 'basis',
   'model.priorEvents': 'priorEvents',
   'dropout.perMonth': 'lossPercent',

@@ -18,11 +18,11 @@ export function MedianFromProtocol({ onMedian }: MedianFromProtocolProps) {
   const [ratio, setRatio] = useState('');
   const [allocation, setAllocation] = useState('1');
   const figures = [control, ratio, allocation].map(numberTyped);
-  const [controlMedian, hazardRatio, share] = figures;
+  const [controlMedianMonths, hazardRatio, allocationRatio] = figures;
   const complete = figures.every((figure) => figure !== null && Number.isFinite(figure) && figure > 0);
   const median =
-    complete && controlMedian && hazardRatio && share
-      ? pooledMedianMonths(controlMedian, hazardRatio, share).toFixed(1)
+    complete && controlMedianMonths && hazardRatio && allocationRatio
+      ? pooledMedianMonths({ controlMedianMonths, hazardRatio, allocationRatio }).toFixed(1)
       : null;
   return (
     <div className="mt-3 border-y border-rule bg-paper-sunk px-5 py-3">

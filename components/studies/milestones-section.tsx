@@ -60,7 +60,7 @@ export function MilestonesSection({ state, folded, onChange, onDone }: Milestone
         {rows.fields.map((row, place) => (
           <MilestoneFields
             key={row.fieldId}
-            form={form}
+            state={state}
             place={place}
             rows={typed}
             code={codes.get(row.key) ?? ''}

@@ -62,7 +62,7 @@ export function PlanPreview({ forecast, waitsFor, error, atWork, standIn }: Plan
                     <RowHead>
                       <Mark kind={markOfMilestone(kind)} /> {name ?? code}
                     </RowHead>
-                    <Cell>{milestoneWords(milestone).range}</Cell>
+                    <Cell className="whitespace-nowrap">{milestoneWords(milestone).range}</Cell>
                     <Cell num className={known && chance < DOUBTFUL_BELOW ? 'font-600 text-caution' : 'font-600'}>
                       {known ? formatProbability(chance) : '–'}
                     </Cell>

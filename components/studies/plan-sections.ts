@@ -28,13 +28,17 @@ export const ENROLMENT: SectionCodec<EnrolmentTyped> = {
     path === 'rampUp.fraction' ? `Give a share between 0 and ${formatPercent(1)}, for example 50.` : undefined,
 };
 
+const EVENTS_WORDS: Record<string, string> = {
+  'dropout.perMonth': 'Give a percentage a month from 0 up, for example 0.8.',
+  'model.cureFraction': 'Give a percentage from 0 to under 100, for example 10.',
+};
+
 export const EVENTS: SectionCodec<EventsTyped> = {
   section: 'events',
   typedOf: (value, isSaved) => eventsTyped(value as Plan['events'], isSaved),
   valueOf: (typed, saved) => eventsValue(typed, saved as Plan['events']),
   fieldOf: eventsField,
-  wordsOf: (path) =>
-    path === 'dropout.perMonth' ? 'Give a percentage a month from 0 up, for example 0.8.' : undefined,
+  wordsOf: (path) => EVENTS_WORDS[path],
 };
 
 export const MILESTONES: SectionCodec<MilestonesTyped> = {

@@ -70,15 +70,18 @@ export function eventsSentence(events: Plan['events']): string {
   if (!events) return 'No events are counted: the study has only an enrolment target.';
   const { model, dropout, followUpMonths } = events;
   return [
-    `Median ${formatQuantity(model.medianMonths, 'month')}, ${model.family}${model.shape === undefined ? '' : ` of shape ${model.shape}`},`,
+    `Median ${formatQuantity(model.medianMonths, 'month')}, ${model.family === 'weibull' ? 'Weibull' : model.family}${model.shape === undefined ? '' : ` of shape ${model.shape}`},`,
     model.basis === 'plan'
       ? 'taken as known.'
       : `with the weight of ${formatQuantity(model.priorEvents, 'event')} against the data.`,
+    model.cureFraction ? `${formatPercent(model.cureFraction)} never have the event.` : '',
     `${formatPercent(dropout.perMonth, 1)} lost to follow-up a month.`,
     followUpMonths
       ? `Each patient is followed for ${formatQuantity(followUpMonths, 'month')}.`
       : 'Each patient is followed until the study ends.',
-  ].join(' ');
+  ]
+    .filter(Boolean)
+    .join(' ');
 }
 
 export function simulationSentence({ draws, seed, horizonMonths }: Plan['simulation']): string {

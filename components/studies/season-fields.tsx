@@ -1,14 +1,13 @@
-import type { UseFormReturn } from 'react-hook-form';
 import type { EnrolmentTyped } from '@/components/studies/enrolment-typed';
+import type { PlanSectionForm } from '@/components/studies/use-plan-section';
 import { joinClasses } from '@/components/ui/join-classes';
 
 const MONTHS = ['Jan', 'Feb', 'Mar', 'Apr', 'May', 'Jun', 'Jul', 'Aug', 'Sep', 'Oct', 'Nov', 'Dec'];
 
 /** Twelve shares in one box, as in a printed table. Only the months that differ need typing. */
-export function SeasonFields({ form }: { form: UseFormReturn<EnrolmentTyped> }) {
-  const { errors } = form.formState;
+export function SeasonFields({ state: { form, errorOf } }: { state: PlanSectionForm<EnrolmentTyped> }) {
   const faults = MONTHS.flatMap((month, place) => {
-    const message = errors.season?.[place]?.message;
+    const message = errorOf(`season.${place}`);
     return message ? [{ month, place, message }] : [];
   });
   return (
@@ -30,8 +29,8 @@ export function SeasonFields({ form }: { form: UseFormReturn<EnrolmentTyped> }) 
               type="text"
               inputMode="decimal"
               autoComplete="off"
-              aria-invalid={errors.season?.[place] ? true : undefined}
-              aria-describedby={errors.season?.[place] ? `season-${place}-error` : undefined}
+              aria-invalid={errorOf(`season.${place}`) ? true : undefined}
+              aria-describedby={errorOf(`season.${place}`) ? `season-${place}-error` : undefined}
               className="block min-h-8 w-full min-w-0 bg-transparent px-0.5 pb-1 text-center text-13 focus-visible:-outline-offset-2 aria-invalid:text-stop"
               {...form.register(`season.${place}`)}
             />

@@ -14,8 +14,7 @@ interface SimulationFieldsProps {
 
 /** How the forecast is drawn: three figures that most studies leave as they are. */
 export function SimulationFields({ state, readOnly }: SimulationFieldsProps) {
-  const { form } = state;
-  const { errors } = form.formState;
+  const { form, errorOf } = state;
   if (readOnly) {
     const saved = state.savedValue as Plan['simulation'] | null;
     return <p className="text-ink-soft">{saved ? simulationSentence(saved) : 'Nothing is set yet.'}</p>;
@@ -24,18 +23,12 @@ export function SimulationFields({ state, readOnly }: SimulationFieldsProps) {
     <>
       <SectionNotices section="simulation" state={state} />
       <div className="grid gap-3 sm:grid-cols-3">
-        <NumberField
-          whole
-          label="Draws"
-          hint="10,000 is usual."
-          error={errors.draws?.message}
-          {...form.register('draws')}
-        />
+        <NumberField whole label="Draws" hint="10,000 is usual." error={errorOf('draws')} {...form.register('draws')} />
         <NumberField
           whole
           label="Seed"
           hint="The same seed, the same forecast."
-          error={errors.seed?.message}
+          error={errorOf('seed')}
           {...form.register('seed')}
         />
         <NumberField
@@ -43,7 +36,7 @@ export function SimulationFields({ state, readOnly }: SimulationFieldsProps) {
           label="Horizon"
           unit="months"
           hint="Later dates are not looked for."
-          error={errors.horizonMonths?.message}
+          error={errorOf('horizonMonths')}
           {...form.register('horizonMonths')}
         />
       </div>

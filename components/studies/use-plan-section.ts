@@ -54,6 +54,7 @@ export interface PlanSectionForm<Typed extends FieldValues> {
   faults: SectionFault[];
   /** Faults are shown once a field was left or a save was tried. */
   shownFaults: SectionFault[];
+  errorOf: (field: string) => string | undefined;
   conflict: SavedSection | null;
   failure: string | null;
   isSaving: boolean;
@@ -108,6 +109,7 @@ export function usePlanSection<Typed extends FieldValues>(
   const [conflict, setConflict] = useState<SavedSection | null>(null);
   const [failure, setFailure] = useState<string | null>(null);
   const [tried, setTried] = useState(false);
+  const [refused, setRefused] = useState<readonly SectionFault[]>([]);
   const sending = useSavePlanSection(plan.study.code);
 
   const resolver: Resolver<Typed> = (typed, _context, options) => {
@@ -119,7 +121,7 @@ export function usePlanSection<Typed extends FieldValues>(
     return { values: {}, errors: toNestErrors(errors, options) };
   };
   const standing = useMemo(() => codec.typedOf(base.value, base.isSaved), [codec, base]);
-  const form = useForm<Typed>({ resolver, defaultValues: standing as DefaultValues<Typed>, mode: 'onTouched' });
+  const form = useForm<Typed>({ resolver, defaultValues: standing as DefaultValues<Typed> });
   const typed = useWatch({ control: form.control }) as Typed;
   const value = codec.valueOf(typed, base.value);
   const faults = faultsOf(codec, value);
@@ -148,6 +150,7 @@ export function usePlanSection<Typed extends FieldValues>(
     setConflict(null);
     setFailure(null);
     setTried(false);
+    setRefused([]);
     setKept(null);
     keep(key, null);
   };
@@ -161,10 +164,12 @@ export function usePlanSection<Typed extends FieldValues>(
       else setConflict(theirs.data);
       return same ? theirs.data : null;
     }
-    for (const fault of problem?.errors ?? []) {
-      const path = fault.pointer.split('/').slice(2).join('.');
-      form.setError(codec.fieldOf(path) as FieldPath<Typed>, { message: fault.detail });
-    }
+    setRefused(
+      (problem?.errors ?? []).map(({ pointer, detail }) => ({
+        field: codec.fieldOf(pointer.split('/').slice(2).join('.')),
+        message: detail,
+      })),
+    );
     setFailure(problem?.errors ? null : error.message);
     return null;
   };
@@ -176,6 +181,7 @@ export function usePlanSection<Typed extends FieldValues>(
 
   const send = async (version: number): Promise<SavedSection | null> => {
     setFailure(null);
+    setRefused([]);
     if (!(await check(true))) return null;
     const wished = codec.valueOf(form.getValues(), base.value);
     try {
@@ -190,6 +196,8 @@ export function usePlanSection<Typed extends FieldValues>(
   const isTouched = (fault: SectionFault): boolean =>
     form.getFieldState(fault.field as FieldPath<Typed>, form.formState).isTouched;
 
+  const shownFaults = [...(tried ? faults : faults.filter(isTouched)), ...refused];
+
   return {
     form,
     isSaved: base.isSaved,
@@ -198,7 +206,8 @@ export function usePlanSection<Typed extends FieldValues>(
     version: base.version,
     value: faults.length === 0 ? value : undefined,
     faults,
-    shownFaults: tried ? faults : faults.filter(isTouched),
+    shownFaults,
+    errorOf: (field) => shownFaults.find((fault) => fault.field === field)?.message,
     conflict,
     failure,
     isSaving: sending.isPending,

@@ -1,5 +1,6 @@
 import type { AuditChange } from '../audit/record';
 import { countryName } from '../countries';
+import { unsupportedParts } from '../engine/supported';
 import type { Milestone, MilestoneForecast } from '../engine/types';
 import type { FieldFault } from '../errors';
 import { formatCount, formatDate, formatPercent, formatProbability, formatQuantity } from '../format';
@@ -24,7 +25,21 @@ export function planFaults(plan: PartialPlan): FieldFault[] {
       detail: `${SECTION_TITLES[section]}: nothing is saved yet. Fill in this section and save it.`,
     })),
     ...(plan.milestones ?? []).flatMap((milestone, place) => milestoneFault(milestone, place, plan)),
+    ...(missing.length === 0 ? engineFaults(plan as Plan) : []),
   ];
+}
+
+/** What the engine would refuse at the first run is refused here already. Weights are its business once there are data. */
+function engineFaults({ enrolment, events, milestones, simulation }: Plan): FieldFault[] {
+  return unsupportedParts({
+    format: 'kalends-study/1',
+    study: { code: '', title: '' },
+    dataCutoff: '2000-01-01',
+    enrolment: { ...enrolment, sites: [] },
+    ...(events && { events: { ...events, model: { ...events.model, basis: 'plan' } } }),
+    milestones,
+    simulation,
+  });
 }
 
 function milestoneFault(milestone: Milestone, place: number, plan: PartialPlan): FieldFault[] {
@@ -111,7 +126,7 @@ function eventsLines({ events }: Plan): PlanLine[] {
   const line = (field: string, label: string, value: string): PlanLine => ({ field: `events.${field}`, label, value });
   return [
     { field: 'events', label: 'Events model', value: 'given' },
-    line('model.family', 'Family', model.family),
+    line('model.family', 'Family', model.family === 'weibull' ? 'Weibull' : model.family),
     line('model.medianMonths', 'Median time to event', months(model.medianMonths)),
     line('model.shape', 'Shape', model.shape === undefined ? '1, not given' : String(model.shape)),
     line('model.cureFraction', 'Never have the event', formatPercent(model.cureFraction ?? 0)),

@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { FAMILY_NAMES } from '@/lib/engine/families';
 import type { MilestoneForecast } from '@/lib/engine/types';
 import { faultsOf } from '@/lib/http/problem';
 import { comparePlans, milestoneCode, planChanges, planFaults, sameValue, secondLook } from '@/lib/studies/rules';
@@ -7,6 +8,7 @@ import {
   enrolmentSection,
   eventsSection,
   milestonesSection,
+  OFFERED_FAMILIES,
   type Plan,
   planSchema,
 } from '@/lib/studies/schema';
@@ -130,6 +132,24 @@ describe('rules across sections', () => {
     expect(found.map((fault) => fault.pointer)).toEqual(['/milestones/0/count', '/milestones/1/kind']);
     expect(found[0]!.detail).toContain('899');
     expect(planFaults(PLAN)).toEqual([]);
+  });
+});
+
+describe('what the engine does not compute', () => {
+  it('is refused with the plan, not at its first run', () => {
+    const aged: Plan = {
+      ...PLAN,
+      enrolment: {
+        ...PLAN.enrolment,
+        ageing: { basis: 'plan', floor: 0.5, months: 8 },
+        countryCaps: [{ country: 'DE', cap: 150 }],
+      },
+    };
+    expect(planFaults(aged).map((fault) => fault.pointer)).toEqual(['/enrolment/ageing', '/enrolment/countryCaps']);
+  });
+
+  it('is not offered: the families are the engine’s', () => {
+    expect([...OFFERED_FAMILIES].sort()).toEqual([...FAMILY_NAMES].sort());
   });
 });
 
