@@ -6,8 +6,11 @@ import { StudyMember } from '../../entities/study-member';
 import type { CommandContext } from '../audit/record';
 import { STUDY_ROLES, roleMay, type StudyAction } from '../auth/permissions';
 import type { StudyScope } from '../auth/scope';
+import { calendarDay } from '../clock';
+import { daysApart } from '../dates';
 import type { MilestoneForecast } from '../engine/types';
 import { NotFoundError } from '../errors';
+import { nextMilestone } from './rules';
 import type { Acknowledgement, PublicationHead, PublicationsQuery, PublicationView, ReaderCount } from './schema';
 import { serialiseHead, serialisePublication } from './serialise';
 
@@ -17,6 +20,8 @@ type ReadScope =
 
 /** As many publications as the history of a date shows. */
 export const HISTORY_LENGTH = 12;
+
+const LEFT = 'someone who has left';
 
 const keyOf = (scope: StudyScope<StudyAction>) => ({ organisationId: scope.organisationId, studyId: scope.studyId });
 
@@ -42,15 +47,6 @@ export async function getPublication(
   return viewPublication(scope, await getPublicationRow(scope, params.number, em), em);
 }
 
-/** The publication that stands; null where nothing is published yet. */
-export async function findCurrentPublication(
-  scope: StudyScope<'publications:read'>,
-  em: EntityManager,
-): Promise<PublicationView | null> {
-  const row = await findLastPublication(scope, em);
-  return row && viewPublication(scope, row, em);
-}
-
 export function findLastPublication(scope: StudyScope<StudyAction>, em: EntityManager): Promise<PublicationRow | null> {
   return em.findOne(Publication, keyOf(scope), { orderBy: { number: 'desc' } });
 }
@@ -62,7 +58,7 @@ export async function getPublicationRow(scope: ReadScope, number: number, em: En
 }
 
 /** The publication before this one, against which its dates are said to have moved. */
-export function findPublicationBefore(
+function findPublicationBefore(
   scope: StudyScope<'publications:read'>,
   number: number,
   em: EntityManager,
@@ -143,6 +139,81 @@ export async function listDateHistory(
   }));
 }
 
+export interface PublicationLine {
+  number: number;
+  publishedOn: string;
+  publishedBy: string;
+  dataCutoff: string;
+}
+
+export interface Timeline {
+  publication: PublicationView;
+  previous: { number: number; publishedOn: string; milestones: MilestoneForecast[] } | null;
+  /** Whose history is shown: the one asked for, else the next milestone ahead. */
+  milestone: string;
+  history: DateHistory[];
+  /** All publications, newest first, a page of them. */
+  lines: PublicationLine[];
+  total: number;
+  /** Days between the data and today. */
+  dataAge: number;
+}
+
+interface TimelineQuery {
+  /** The one that stands where none is asked for. */
+  number?: number;
+  milestone?: string;
+  page: number;
+}
+
+/** Everything that the timeline's page shows; null where nothing is published yet. */
+export async function findTimeline(
+  scope: StudyScope<'publications:read'>,
+  query: TimelineQuery,
+  { em, clock }: Pick<CommandContext, 'em' | 'clock'>,
+): Promise<Timeline | null> {
+  const row = query.number ? await getPublicationRow(scope, query.number, em) : await findLastPublication(scope, em);
+  if (!row) return null;
+  const publication = await viewPublication(scope, row, em);
+  const { milestones, dataCutoff } = publication.content;
+  const chosen = milestones.find(({ code }) => code === query.milestone) ?? nextMilestone(milestones);
+  const before = await findPublicationBefore(scope, row.number, em);
+  return {
+    publication,
+    previous: before && {
+      number: before.number,
+      publishedOn: calendarDay(before.publishedAt),
+      milestones: before.content.milestones,
+    },
+    milestone: chosen?.code ?? '',
+    history: chosen ? await listDateHistory(scope, { code: chosen.code, upTo: row.number }, em) : [],
+    lines: await listLines(scope, query.page, em),
+    total: await em.count(Publication, keyOf(scope)),
+    dataAge: daysApart(dataCutoff, calendarDay(clock.now())),
+  };
+}
+
+async function listLines(
+  scope: StudyScope<'publications:read'>,
+  page: number,
+  em: EntityManager,
+): Promise<PublicationLine[]> {
+  const rows = await em.execute<
+    { number: number; published_on: string; published_by: string | null; data_cutoff: string }[]
+  >(
+    `select number, to_char(published_at at time zone 'UTC', 'YYYY-MM-DD') as published_on, p.name as published_by, content->>'dataCutoff' as data_cutoff
+       from publication left join person p on p.id = published_by
+      where organisation_id = ? and study_id = ? order by number desc limit ? offset ?`,
+    [scope.organisationId, scope.studyId, HISTORY_LENGTH, (page - 1) * HISTORY_LENGTH],
+  );
+  return rows.map((row) => ({
+    number: row.number,
+    publishedOn: row.published_on,
+    publishedBy: row.published_by ?? LEFT,
+    dataCutoff: row.data_cutoff,
+  }));
+}
+
 /** How many people of each reading role will see a publication. */
 export async function countReaders(scope: StudyScope<StudyAction>, em: EntityManager): Promise<ReaderCount[]> {
   const counts = await em.execute<{ role: ReaderCount['role']; count: number }[]>(
@@ -165,5 +236,5 @@ export async function listStatisticians(scope: StudyScope<'publications:read'>, 
 async function namesOf(em: EntityManager, rows: readonly PublicationRow[]): Promise<(row: PublicationRow) => string> {
   const people = await em.find(Person, { id: { $in: [...new Set(rows.map((row) => row.publishedBy))] } });
   const names = new Map(people.map((person) => [person.id, person.name]));
-  return (row) => names.get(row.publishedBy) ?? 'someone who has left';
+  return (row) => names.get(row.publishedBy) ?? LEFT;
 }

@@ -16,8 +16,18 @@ import type { PublishedForecast } from './schema';
 /** Data older than this are said to be old. */
 export const STALE_AFTER_DAYS = 60;
 
-export function dataAgeDays(dataCutoff: string, today: string): number {
-  return daysApart(dataCutoff, today);
+/** When a milestone was or will be there, for the order on the page. */
+const dayOf = ({ reachedOn, quantiles }: MilestoneForecast): string =>
+  reachedOn ?? quantiles['0.5'] ?? quantiles['0.1'] ?? '9999';
+
+export function inOrderOfTime(milestones: readonly MilestoneForecast[]): MilestoneForecast[] {
+  return [...milestones].sort((a, b) => dayOf(a).localeCompare(dayOf(b)) || a.code.localeCompare(b.code));
+}
+
+/** The soonest milestone that is still ahead; the last one where all are reached. */
+export function nextMilestone(milestones: readonly MilestoneForecast[]): MilestoneForecast | undefined {
+  const ordered = inOrderOfTime(milestones);
+  return ordered.find(({ reachedOn }) => reachedOn === null) ?? ordered.at(-1);
 }
 
 interface PublishedRun {

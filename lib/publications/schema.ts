@@ -122,3 +122,9 @@ export interface ReaderCount {
   role: 'statistician' | 'manager' | 'sponsor';
   count: number;
 }
+
+/** What the timeline's address may ask for; anything else is as if it had not been asked. */
+export const timelineSearch = z.object({
+  milestone: z.string().max(40).optional().catch(undefined),
+  page: z.coerce.number().int().min(1).max(100_000).catch(1),
+});
