@@ -5,7 +5,7 @@ import { SimulationFields } from '@/components/studies/simulation-section';
 import { PlanDifferences } from '@/components/studies/plan-differences';
 import { SectionFrame } from '@/components/studies/section-frame';
 import type { PlanBoardState } from '@/components/studies/use-plan-board';
-import type { SavePlan } from '@/components/studies/use-save-plan';
+import { REASON_ID, type SavePlan } from '@/components/studies/use-save-plan';
 import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
 import { SelectField } from '@/components/ui/select-field';
@@ -45,6 +45,7 @@ export function CheckSection({ board, saving }: CheckSectionProps) {
                 Why it changes: forecasts were made on the version before
               </legend>
               <SelectField
+                id={REASON_ID}
                 label="Kind of reason"
                 fieldClassName="max-w-[320px]"
                 value={saving.reason.kind}

@@ -31,7 +31,7 @@ function PlanPage({ initial, personId, onDevice }: PlanBoardProps & { onDevice: 
   const saving = useSavePlan(board);
   const { forecast, state, error } = usePlanForecast(onDevice ? board.study : null);
   const { plan, sections } = board;
-  const steps = planSteps(board);
+  const steps = planSteps(board, saving.faults);
   const frameOf = (section: PlanSection) => ({
     folded: board.folded(section),
     onChange: plan.maySave ? () => board.open(section) : null,

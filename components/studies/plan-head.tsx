@@ -67,6 +67,7 @@ export function PlanHead({ plan, forecast, steps, isPending, saving }: PlanHeadP
               Save the plan
             </Button>
             <FaultWords steps={steps} />
+            {saving.failure && <p className="text-13 text-stop">{saving.failure}</p>}
             <p className="text-13 text-ink-soft">
               {draft &&
                 isPending &&
@@ -94,7 +95,7 @@ function FaultWords({ steps }: { steps: readonly PlanStep[] }) {
   if (count === 0) return null;
   return (
     <p role="status" className="text-13">
-      <b className="text-stop">{count === 1 ? 'One figure to put right' : `${count} figures to put right`}</b> under{' '}
+      <b className="text-stop">{count === 1 ? 'One thing to put right' : `${count} things to put right`}</b> under{' '}
       {wrong.map((step, place) => (
         <span key={step.id}>
           {place > 0 && ', '}

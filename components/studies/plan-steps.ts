@@ -1,5 +1,6 @@
 import { isTargetField } from '@/components/studies/enrolment-typed';
 import type { PlanBoardState } from '@/components/studies/use-plan-board';
+import type { FieldFault } from '@/lib/errors';
 import { formatQuantity } from '@/lib/format';
 import type { Plan, PlanSection } from '@/lib/studies/schema';
 
@@ -13,7 +14,7 @@ export interface PlanStep {
 }
 
 /** The six steps and how each stands; a fault counts at the step whose field it is. */
-export function planSteps(board: PlanBoardState): PlanStep[] {
+export function planSteps(board: PlanBoardState, refused: readonly FieldFault[]): PlanStep[] {
   const { plan, sections } = board;
   const saved = <S extends keyof Plan>(section: S): Plan[S] | null => sections[section].savedValue as Plan[S] | null;
   const enrolment = saved('enrolment');
@@ -63,7 +64,7 @@ export function planSteps(board: PlanBoardState): PlanStep[] {
       id: 'check',
       title: 'Check and save',
       words: plan.current ? `version ${plan.current.number} stands` : 'no version yet',
-      faults: sections.simulation.shownFaults.length,
+      faults: sections.simulation.shownFaults.length + refused.length,
     },
   ];
   return steps.map((step) => (step.faults > 0 ? { ...step, words: `${step.faults} to put right` } : step));

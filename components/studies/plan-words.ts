@@ -1,7 +1,7 @@
 import { countryName } from '@/lib/countries';
 import type { Milestone } from '@/lib/engine/types';
 import { formatCount, formatDate, formatPercent, formatQuantity } from '@/lib/format';
-import { milestoneWaits } from '@/lib/studies/rules';
+import { milestoneWaits, planPercent, planQuantity } from '@/lib/studies/rules';
 import type { Plan, PlanSite } from '@/lib/studies/schema';
 
 /* Sections that are done, each as a sentence or two. */
@@ -33,11 +33,11 @@ export function ratesSentence({
   countryCaps = [],
 }: Plan['enrolment']): string {
   const season = (seasonality ?? []).flatMap((share, month) =>
-    share === 1 ? [] : [`${MONTHS[month]} ${formatPercent(share)}`],
+    share === 1 ? [] : [`${MONTHS[month]} ${planPercent(share)}`],
   );
   return [
     `${rate.meanPerMonth} a month at a site, spread between sites (CV) ${rate.cv}, ${rate.basis === 'plan' ? 'taken as known' : 'estimated from the data as they come'}.`,
-    rampUp && `The first ${formatQuantity(rampUp.months, 'month')} at ${formatPercent(rampUp.fraction)} of the rate.`,
+    rampUp && `The first ${planQuantity(rampUp.months, 'month')} at ${planPercent(rampUp.fraction)} of the rate.`,
     countryRates.length > 0 &&
       `${countryRates.map((row) => `${countryName(row.country)} ${row.meanPerMonth}`).join(', ')}.`,
     season.length > 0 && `Season: ${season.join(', ')}.`,
@@ -70,14 +70,14 @@ export function eventsSentence(events: Plan['events']): string {
   if (!events) return 'No events are counted: the study has only an enrolment target.';
   const { model, dropout, followUpMonths } = events;
   return [
-    `Median ${formatQuantity(model.medianMonths, 'month')}, ${model.family === 'weibull' ? 'Weibull' : model.family}${model.shape === undefined ? '' : ` of shape ${model.shape}`},`,
+    `Median ${planQuantity(model.medianMonths, 'month')}, ${model.family === 'weibull' ? 'Weibull' : model.family}${model.shape === undefined ? '' : ` of shape ${model.shape}`},`,
     model.basis === 'plan'
       ? 'taken as known.'
-      : `with the weight of ${formatQuantity(model.priorEvents, 'event')} against the data.`,
-    model.cureFraction ? `${formatPercent(model.cureFraction)} never have the event.` : '',
-    `${formatPercent(dropout.perMonth, 1)} lost to follow-up a month.`,
+      : `with the weight of ${planQuantity(model.priorEvents, 'event')} against the data.`,
+    model.cureFraction ? `${planPercent(model.cureFraction)} never have the event.` : '',
+    `${planPercent(dropout.perMonth)} lost to follow-up a month.`,
     followUpMonths
-      ? `Each patient is followed for ${formatQuantity(followUpMonths, 'month')}.`
+      ? `Each patient is followed for ${planQuantity(followUpMonths, 'month')}.`
       : 'Each patient is followed until the study ends.',
   ]
     .filter(Boolean)

@@ -24,6 +24,9 @@ export interface SavePlan {
   savePlan: () => Promise<void>;
 }
 
+/** Where the focus goes when the reason is what is missing. */
+export const REASON_ID = 'plan-reason';
+
 const NO_REASON: ReasonTyped = { kind: '', text: '' };
 
 /** One press: checks every section, saves those that were typed in, and makes a version of them. */
@@ -59,6 +62,8 @@ export function useSavePlan(board: PlanBoardState): SavePlan {
   const refuse = (error: Error): void => {
     const problem = error instanceof ProblemError ? error.problem : null;
     setFaults(problem?.errors ?? []);
+    if (problem?.errors?.some(({ pointer }) => pointer.startsWith('/reason')))
+      document.getElementById(REASON_ID)?.focus();
     setFailure(problem?.errors ? null : error.message);
   };
 
@@ -87,7 +92,10 @@ export function useSavePlan(board: PlanBoardState): SavePlan {
 
   return {
     reason,
-    setReason,
+    setReason: (typed) => {
+      setReason(typed);
+      setFaults(faults.filter(({ pointer }) => !pointer.startsWith('/reason')));
+    },
     faults,
     failure,
     isSaving: busy,

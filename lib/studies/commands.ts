@@ -134,9 +134,10 @@ export async function savePlanVersion(
   const { em, clock } = context;
   const draft = await lockDraft(scope, context);
   const current = await findCurrentVersion(scope, em);
+  await refuseOtherSections(body, draft, current, em);
   if (current && PLAN_SECTIONS.every((section) => sameValue(draft.sections[section], current.plan[section])))
     return serialiseVersion(current, await nameOf(current.createdBy, em));
-  await refuseStale(body, draft, current, em);
+  if (body.baseNumber !== (current?.number ?? 0)) throw await staleConflict(draft, current, [], em);
   const plan = await checkedPlan(scope, body, draft, em);
   const row = em.create(PlanVersion, {
     id: randomUUID(),
@@ -163,7 +164,7 @@ export async function savePlanVersion(
 }
 
 /** What is saved as a version is what its author had in view. */
-async function refuseStale(
+async function refuseOtherSections(
   body: SavePlanVersionBody,
   draft: PlanDraftRow,
   current: PlanVersionRow | null,
@@ -172,13 +173,20 @@ async function refuseStale(
   const moved = PLAN_SECTIONS.filter(
     (section) => (draft.sections.versions?.[section] ?? 0) !== body.sectionVersions[section],
   );
-  if (moved.length === 0 && body.baseNumber === (current?.number ?? 0)) return;
-  throw new ConflictError(
+  if (moved.length > 0) throw await staleConflict(draft, current, moved, em);
+}
+
+async function staleConflict(
+  draft: PlanDraftRow,
+  current: PlanVersionRow | null,
+  moved: readonly SavedSection['section'][],
+  em: EntityManager,
+): Promise<ConflictError> {
+  const sections: SavedSection[] = [];
+  for (const section of moved) sections.push(await savedSection(draft, section, em));
+  return new ConflictError(
     'Someone else changed the plan while you were working on it. Look at what stands now, then save.',
-    {
-      version: current && serialiseVersionHead(current, await nameOf(current.createdBy, em)),
-      sections: await Promise.all(moved.map((section) => savedSection(draft, section, em))),
-    },
+    { version: current && serialiseVersionHead(current, await nameOf(current.createdBy, em)), sections },
   );
 }
 

@@ -3,7 +3,7 @@ import { countryName } from '../countries';
 import { unsupportedParts } from '../engine/supported';
 import type { Milestone, MilestoneForecast } from '../engine/types';
 import type { FieldFault } from '../errors';
-import { formatCount, formatDate, formatPercent, formatProbability, formatQuantity } from '../format';
+import { formatCount, formatDate, formatProbability, formatQuantity } from '../format';
 import type { Plan, PlanDifference, PlanSection } from './schema';
 
 /** Sections as far as they are there, for rules that look across them. */
@@ -69,8 +69,18 @@ interface PlanLine {
 
 const MONTH_NAMES = 'January February March April May June July August September October November December'.split(' ');
 const NONE = 'none';
-const months = (count: number): string =>
-  Number.isInteger(count) ? formatQuantity(count, 'month') : `${count} months`;
+
+/** A quantity that may be a fraction, to its last digit: two versions that differ must read differently. */
+export function planQuantity(count: number, one: string): string {
+  return Number.isInteger(count) ? formatQuantity(count, one) : `${count} ${one}s`;
+}
+
+/** A share as the per cent that was typed. */
+export function planPercent(share: number): string {
+  return `${Number((share * 100).toPrecision(12))}\u00a0%`;
+}
+
+const months = (count: number): string => planQuantity(count, 'month');
 const basisWords = (basis: 'plan' | 'data'): string =>
   basis === 'plan' ? 'known, as planned' : 'estimated from the data';
 
@@ -95,18 +105,18 @@ function enrolmentLines({ enrolment }: Plan): PlanLine[] {
     line(
       'rampUp',
       'First months of a site',
-      rampUp ? `${months(rampUp.months)} at ${formatPercent(rampUp.fraction)} of its rate` : NONE,
+      rampUp ? `${months(rampUp.months)} at ${planPercent(rampUp.fraction)} of its rate` : NONE,
     ),
     line(
       'ageing',
       'Slowing with age',
-      ageing ? `to ${formatPercent(ageing.floor)} over ${months(ageing.months)}, ${basisWords(ageing.basis)}` : NONE,
+      ageing ? `to ${planPercent(ageing.floor)} over ${months(ageing.months)}, ${basisWords(ageing.basis)}` : NONE,
     ),
     ...calendar.map((pause) =>
       line(
         `calendar.${pause.from}.${pause.to}`,
         `${formatDate(pause.from)} to ${formatDate(pause.to)}`,
-        `${formatPercent(pause.multiplier)} of the rate ${pauseWhere(pause)}`,
+        `${planPercent(pause.multiplier)} of the rate ${pauseWhere(pause)}`,
       ),
     ),
     ...countryCaps.map((row) =>
@@ -129,12 +139,12 @@ function eventsLines({ events }: Plan): PlanLine[] {
     line('model.family', 'Family', model.family === 'weibull' ? 'Weibull' : model.family),
     line('model.medianMonths', 'Median time to event', months(model.medianMonths)),
     line('model.shape', 'Shape', model.shape === undefined ? '1, not given' : String(model.shape)),
-    line('model.cureFraction', 'Never have the event', formatPercent(model.cureFraction ?? 0)),
+    line('model.cureFraction', 'Never have the event', planPercent(model.cureFraction ?? 0)),
     line('model.basis', 'Time to event', basisWords(model.basis)),
-    line('model.priorEvents', 'Weight of the plan', formatQuantity(model.priorEvents, 'event')),
-    line('dropout.perMonth', 'Loss to follow-up', `${formatPercent(dropout.perMonth, 2)} a month`),
+    line('model.priorEvents', 'Weight of the plan', planQuantity(model.priorEvents, 'event')),
+    line('dropout.perMonth', 'Loss to follow-up', `${planPercent(dropout.perMonth)} a month`),
     line('dropout.basis', 'Loss to follow-up', basisWords(dropout.basis)),
-    line('dropout.priorEvents', 'Weight of the planned loss', formatQuantity(dropout.priorEvents, 'patient')),
+    line('dropout.priorEvents', 'Weight of the planned loss', planQuantity(dropout.priorEvents, 'patient')),
     line(
       'followUpMonths',
       'Each patient is followed for',

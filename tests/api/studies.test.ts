@@ -200,6 +200,8 @@ describe('a plan, from its first section to its second version', () => {
     const stale = await saveVersion({ baseNumber: 1, sectionVersions: before });
     expect(stale.status).toBe(409);
     expect(stale.json.current.sections).toMatchObject([{ section: 'enrolment', value: { target: 950 } }]);
+    const unseen = await saveVersion({ baseNumber: 1, sectionVersions: { ...before, enrolment: 99 } });
+    expect(unseen.status).toBe(409);
     const old = await saveVersion({ baseNumber: 0, sectionVersions: await sectionVersions() });
     expect(old.status).toBe(409);
     expect(old.json.current.version.number).toBe(1);
@@ -223,6 +225,11 @@ describe('a plan, from its first section to its second version', () => {
     const rows = await trail('plan:save-version');
     expect(rows.at(-1)).toMatchObject({ record_id: '2', reason: 'protocol amendment: Amendment 2 raises the target.' });
     expect(rows.at(-1)!.changes).toEqual([{ field: 'enrolment.target', old: 900, new: 950 }]);
+  });
+
+  it('is not told to be saved when somebody else saved another one', async () => {
+    const stale = { ...(await sectionVersions()), enrolment: 1 };
+    expect((await saveVersion({ baseNumber: 2, sectionVersions: stale })).status).toBe(409);
   });
 
   it('keeps its versions: each is read as it was, and two are compared', async () => {
