@@ -32,6 +32,7 @@ export function EnrolmentSections(props: EnrolmentSectionsProps) {
   const countryRows = useFieldArray({ control: form.control, name: 'countryRates' });
   const rampMonths = useWatch({ control: form.control, name: 'rampMonths' });
   const sitesHref = `/studies/${encodeURIComponent(plan.study.code)}/sites`;
+  const standIn = plan.sites.length === 0 && <PlannedSitesFields value={plannedSites} onChange={onPlannedSites} />;
   return (
     <>
       <SectionFrame
@@ -43,6 +44,7 @@ export function EnrolmentSections(props: EnrolmentSectionsProps) {
         sentence={
           <>
             {saved ? targetSentence(saved, plan.sites) : 'Nothing is set yet.'} <Link href={sitesHref}>Sites</Link>
+            {standIn}
           </>
         }
       >
@@ -61,7 +63,7 @@ export function EnrolmentSections(props: EnrolmentSectionsProps) {
             <Link href={sitesHref}>{plan.sites.length > 0 ? 'Open the sites' : 'Add sites, or upload a list'}</Link>
           </p>
         </div>
-        {plan.sites.length === 0 && <PlannedSitesFields value={plannedSites} onChange={onPlannedSites} />}
+        {standIn}
       </SectionFrame>
       <SectionFrame
         step={3}

@@ -31,7 +31,7 @@ export function SectionFrame({ step, id, title, aside, sentence, folded, onChang
       }
       aside={
         folded && onChange ? (
-          <Button variant="quiet" size="small" className="-my-1.5" onClick={onChange}>
+          <Button variant="quiet" size="small" className="-my-1.5 max-md:-ml-3 md:-mr-3" onClick={onChange}>
             Change<span className="sr-only"> {title.toLowerCase()}</span>
           </Button>
         ) : (

@@ -1,5 +1,6 @@
 'use client';
 
+import { useRouter } from 'next/navigation';
 import { useState } from 'react';
 import type { PlanBoardState } from '@/components/studies/use-plan-board';
 import { sayDone } from '@/components/ui/toaster';
@@ -32,6 +33,7 @@ const NO_REASON: ReasonTyped = { kind: '', text: '' };
 /** One press: checks every section, saves those that were typed in, and makes a version of them. */
 export function useSavePlan(board: PlanBoardState): SavePlan {
   const { plan, sections } = board;
+  const router = useRouter();
   const [reason, setReason] = useState(NO_REASON);
   const [faults, setFaults] = useState<FieldFault[]>([]);
   const [failure, setFailure] = useState<string | null>(null);
@@ -82,6 +84,7 @@ export function useSavePlan(board: PlanBoardState): SavePlan {
         reason: reason.text || null,
       });
       setReason(NO_REASON);
+      router.refresh();
       sayDone(`The plan is saved as version ${saved.number}.`);
     } catch (error) {
       refuse(error as Error);
