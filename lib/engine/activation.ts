@@ -7,7 +7,7 @@ export interface ActivationWindow {
 
 /**
  * Activation moment of a planned site: triangular(earliest, likely, latest), conditioned on being after the cut-off
- * (moment 0), by inversion of the distribution function over (F(0), 1).
+ * (moment 0), by inversion.
  *
  * @param window with `latest` after the cut-off
  * @param uniform from (0, 1)
@@ -16,22 +16,23 @@ export function activationMoment(window: ActivationWindow, uniform: number): num
   const { earliest, likely, latest } = window;
   const width = latest - earliest;
   if (width <= 0) return latest;
-  const before = triangularShare(window, 0);
-  const share = before + uniform * (1 - before);
-  const rising = (likely - earliest) / width;
-  if (share <= rising) return Math.max(0, earliest + Math.sqrt(share * width * (likely - earliest)));
   // In terms of the upper tail, which keeps its digits when nearly the whole window has passed.
-  const tail = (1 - uniform) * (1 - before);
-  return Math.max(0, latest - Math.sqrt(tail * width * (latest - likely)));
+  const tail = (1 - uniform) * shareAfterCutoff(window);
+  const share = 1 - tail;
+  const rises = (likely - earliest) / width;
+  const moment =
+    share <= rises
+      ? earliest + Math.sqrt(share * width * (likely - earliest))
+      : latest - Math.sqrt(tail * width * (latest - likely));
+  return Math.max(0, moment);
 }
 
-/** Distribution function of triangular(earliest, likely, latest). */
-function triangularShare({ earliest, likely, latest }: ActivationWindow, moment: number): number {
-  if (moment <= earliest) return 0;
-  if (moment >= latest) return 1;
+/** P(T > 0) of triangular(earliest, likely, latest), latest > 0. */
+function shareAfterCutoff({ earliest, likely, latest }: ActivationWindow): number {
+  if (earliest >= 0) return 1;
   const width = latest - earliest;
-  if (moment <= likely) return (moment - earliest) ** 2 / (width * (likely - earliest));
-  return 1 - (latest - moment) ** 2 / (width * (latest - likely));
+  if (likely >= 0) return 1 - (earliest * earliest) / (width * (likely - earliest));
+  return (latest * latest) / (width * (latest - likely));
 }
 
 /** Mean delay after the cut-off of a site whose whole window has passed without its activation, in days. */

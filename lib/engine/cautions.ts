@@ -45,8 +45,11 @@ function siteCautions({ study, schedule, enrolment }: PreparedForecast): Caution
       sponsorText: `${counted(overdue.length, 'site')} ${rest}`,
     });
   }
-  const unlogged = sites.filter((_, place) => (enrolment.calendars[place]?.unlogged.length ?? 0) > 0);
-  if (unlogged.length > 0 && schedule.start < 0) {
+  const unlogged = sites.filter(
+    ({ cap, randomised }, place) =>
+      (enrolment.calendars[place]?.unlogged.length ?? 0) > 0 && (cap ?? Infinity) > (randomised ?? 0),
+  );
+  if (unlogged.length > 0) {
     const rest = `not logged every month up to the data cut-off; patients of those months are simulated, not counted as none.`;
     cautions.push({
       code: 'unlogged-months',
@@ -85,10 +88,8 @@ function eventCautions(
       );
     }
     const far = prepared.milestones.list.filter(
-      (prepared_, place) =>
-        prepared_.milestone.kind === 'events' &&
-        prepared_.reachedDay === null &&
-        reachesBeyondData(events, samples[place] as Float64Array),
+      ({ milestone, reachedDay }, place) =>
+        milestone.kind === 'events' && reachedDay === null && reachesBeyondData(events, samples[place] as Float64Array),
     );
     if (far.length > 0) {
       add(

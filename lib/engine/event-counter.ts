@@ -7,7 +7,7 @@ export interface EventCounter {
   load(moments: Float64Array, count: number): void;
   /** Moment of the k-th event, observed ones included; Infinity where there are not that many. k counts from 1. */
   momentOf(k: number): number;
-  /** How many events fall up to the end of a day (a whole moment). */
+  /** How many events fall up to the end of a day, a whole moment not before the earliest simulated one. */
   countAt(day: number): number;
 }
 
@@ -59,7 +59,7 @@ export function createEventCounter(
       for (const moment of observed) if (Math.ceil(moment) - first === day) sameDay[many++] = moment;
       return selectRank(sameDay, many, rank);
     },
-    countAt: (day) => (day < first ? before : (upTo[Math.min(day - first, days - 1)] as number)),
+    countAt: (day) => upTo[Math.min(day - first, days - 1)] as number,
   };
 }
 
