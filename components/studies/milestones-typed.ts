@@ -59,7 +59,7 @@ export function milestonesValue({ rows }: MilestonesTyped): unknown {
   const codes = milestoneCodes(rows);
   return rows.map((row) => ({
     code: codes.get(row.key),
-    name: row.name,
+    name: row.name.trim(),
     kind: row.kind,
     ...((row.kind === 'randomised' || row.kind === 'events') && { count: numberTyped(row.count) }),
     ...(row.kind === 'follow-up' && { months: numberTyped(row.months) }),
@@ -71,5 +71,5 @@ export function milestonesValue({ rows }: MilestonesTyped): unknown {
 /** Faults of the list stand at its first name; those of a code at the name that it comes from. */
 export function milestonesField(path: string): string {
   if (path === '') return 'rows.0.name';
-  return `rows.${path}`.replace(/\.code$/, '.name');
+  return `rows.${path}`.replace(/\.code$/, '.name').replace(/\.of\.\d+$/, '.of');
 }

@@ -72,7 +72,7 @@ function PlanPage({ initial, personId, onDevice }: PlanBoardProps & { onDevice: 
             forecast={forecast}
             waitsFor={board.waitsFor}
             error={error}
-            atWork={state === 'running'}
+            atWork={state === 'drawing'}
             standIn={plan.sites.length === 0}
           />
         </aside>

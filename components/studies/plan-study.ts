@@ -5,9 +5,6 @@ import { addDays, daysApart } from '@/lib/dates';
 import type { Site, Study } from '@/lib/engine/types';
 import type { Plan, PlanSite } from '@/lib/studies/schema';
 
-/** So many draws answer within a moment; the picture says how many they are. */
-export const PREVIEW_DRAWS = 2000;
-
 const ISO = /^\d{4}-\d{2}-\d{2}$/;
 
 /** Sites that open one by one, evenly between two days; none while the three fields are not in order. */
@@ -56,7 +53,7 @@ export function planStudy(
       },
     }),
     milestones: plan.milestones,
-    simulation: { ...plan.simulation, draws: Math.min(plan.simulation.draws, PREVIEW_DRAWS) },
+    simulation: plan.simulation,
   };
 }
 

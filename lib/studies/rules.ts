@@ -4,6 +4,7 @@ import { unsupportedParts } from '../engine/supported';
 import type { Milestone, MilestoneForecast } from '../engine/types';
 import type { FieldFault } from '../errors';
 import { formatCount, formatDate, formatProbability, formatQuantity } from '../format';
+import { milestoneFaults } from '../study-file/milestone-checks';
 import type { Plan, PlanDifference, PlanSection } from './schema';
 
 /** Sections as far as they are there, for rules that look across them. */
@@ -24,7 +25,7 @@ export function planFaults(plan: PartialPlan): FieldFault[] {
       pointer: `/${section}`,
       detail: `${SECTION_TITLES[section]}: nothing is saved yet. Fill in this section and save it.`,
     })),
-    ...(plan.milestones ?? []).flatMap((milestone, place) => milestoneFault(milestone, place, plan)),
+    ...milestoneFaultsOf(plan),
     ...(missing.length === 0 ? engineFaults(plan as Plan) : []),
   ];
 }
@@ -42,23 +43,20 @@ function engineFaults({ enrolment, events, milestones, simulation }: Plan): Fiel
   });
 }
 
-function milestoneFault(milestone: Milestone, place: number, plan: PartialPlan): FieldFault[] {
-  if (milestone.kind === 'events' && plan.events === null) {
-    return [
-      {
-        pointer: `/milestones/${place}/kind`,
-        detail: 'It waits for events, and the plan has no events model. Give one, or let it wait for patients.',
-      },
-    ];
-  }
-  const target = plan.enrolment?.target;
-  if (milestone.kind !== 'randomised' || target === undefined || milestone.count <= target) return [];
-  return [
-    {
-      pointer: `/milestones/${place}/count`,
-      detail: `Enrolment stops at the target of ${formatCount(target)}. Put the count at ${formatCount(target)} or less, or raise the target.`,
-    },
-  ];
+/** Events that no model tells of, and counts that enrolment never reaches. */
+function milestoneFaultsOf({ milestones = [], events, enrolment }: PartialPlan): FieldFault[] {
+  const target = enrolment?.target;
+  const beyond = milestones.flatMap((milestone, place) =>
+    milestone.kind !== 'randomised' || target === undefined || milestone.count <= target
+      ? []
+      : [
+          {
+            pointer: `/milestones/${place}/count`,
+            detail: `Enrolment stops at the target of ${formatCount(target)}. Put the count at ${formatCount(target)} or less, or raise the target.`,
+          },
+        ],
+  );
+  return events === undefined ? beyond : [...beyond, ...milestoneFaults({ milestones, events })];
 }
 
 interface PlanLine {

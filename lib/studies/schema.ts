@@ -1,8 +1,13 @@
 import { z } from 'zod';
 import { STUDY_ROLES } from '../auth/permissions';
-import { isCountryCode } from '../countries';
 import type { Enrolment, EventsPart, Milestone, Study } from '../engine/types';
 import { instant, isoDate } from '../http/params';
+import { eventFaults } from '../study-file/event-checks';
+import { plainWords, schemaFaults, type StudyFileFault } from '../study-file/faults';
+import { milestoneFaults } from '../study-file/milestone-checks';
+import { asList, asMembers, asText } from '../study-file/readable';
+import { studyFileSchema } from '../study-file/schema';
+import { siteFaults } from '../study-file/site-checks';
 
 /** What a plan version holds: the study file's own parts, without the sites and the data. Names are the contract's. */
 export interface Plan {
@@ -34,183 +39,93 @@ export const PLAN_REASON_NAMES: Record<PlanReason, string> = {
   assumption: 'assumption revised',
 };
 
-const between = (low: number, high: number, example: string) =>
-  z
-    .number(`Give a number, for example ${example}.`)
-    .min(low, `At least ${low}.`)
-    .max(high, `At most ${high.toLocaleString('en-GB')}.`);
-const above = (floor: number, high: number, example: string) =>
-  z
-    .number(`Give a number, for example ${example}.`)
-    .gt(floor, `Above ${floor}, for example ${example}.`)
-    .max(high, `At most ${high.toLocaleString('en-GB')}.`);
-const whole = (low: number, high: number, example: string) => between(low, high, example).int('Whole numbers only.');
-
-const planDate = isoDate.refine(
-  (date) => date >= '1990-01-01' && date <= '2100-12-31',
-  'Give a day between 1990 and 2100.',
-);
-const country = z.string().refine(isCountryCode, 'Choose a country.');
-const basis = z.enum(['plan', 'data'], 'Say whether the plan is taken as known or the data decide.');
-const siteCode = z.string().min(1).max(40);
-
-const oncePerCountry = (rows: { country: string }[], context: z.RefinementCtx): void => {
-  rows.forEach((row, place) => {
-    if (rows.findIndex((other) => other.country === row.country) < place)
-      context.addIssue({
-        code: 'custom',
-        path: [place, 'country'],
-        message: 'This country stands above already. Once is enough.',
-      });
-  });
-};
-
-export const enrolmentSection = z.strictObject({
-  target: whole(1, 1_000_000, '1200'),
-  rate: z.strictObject({ meanPerMonth: above(0, 1000, '0.55'), cv: between(0.01, 10, '0.8'), basis }),
-  countryRates: z
-    .array(z.strictObject({ country, meanPerMonth: above(0, 1000, '0.55') }))
-    .max(249)
-    .superRefine(oncePerCountry)
-    .optional(),
-  seasonality: z
-    .array(between(0, 1000, '0.7'))
-    .length(12, 'Give a share for each of the twelve months.')
-    .refine(
-      (months) => months.every((share) => !Number.isFinite(share)) || months.some((share) => share > 0),
-      'At least one month has to be above 0.',
-    )
-    .optional(),
-  rampUp: z.strictObject({ months: between(0, 1200, '2'), fraction: between(0, 1, '0.5') }).optional(),
-  ageing: z.strictObject({ basis, floor: between(0, 1, '0.5'), months: above(0, 1200, '8') }).optional(),
-  calendar: z
-    .array(
-      z
-        .strictObject({
-          from: planDate,
-          to: planDate,
-          countries: z.array(country).max(249).optional(),
-          sites: z.array(siteCode).max(5000).optional(),
-          multiplier: between(0, 1000, '0'),
-        })
-        .refine((pause) => pause.from <= pause.to, { path: ['to'], message: 'The last day lies before the first.' }),
-    )
-    .max(200)
-    .optional(),
-  countryCaps: z
-    .array(z.strictObject({ country, cap: whole(0, 1_000_000, '150') }))
-    .max(249)
-    .superRefine(oncePerCountry)
-    .optional(),
-});
-
-/** The families that the screens offer so far; the study file knows more. */
+/** The families that the engine computes and the screens offer; the study file's schema knows more. */
 export const OFFERED_FAMILIES = ['exponential', 'weibull'] as const;
 
-export const eventsSection = z
-  .strictObject({
-    model: z.strictObject({
-      family: z.enum(OFFERED_FAMILIES, 'Choose exponential or Weibull.'),
-      medianMonths: above(0, 1200, '20'),
-      shape: between(0.05, 20, '1.1').optional(),
-      cureFraction: z
-        .number('Give a share, for example 0.1.')
-        .min(0, 'At least 0.')
-        .lt(1, 'Below 1: some have the event.')
-        .optional(),
-      basis,
-      priorEvents: between(0, 1_000_000, '5'),
-    }),
-    dropout: z.strictObject({ perMonth: between(0, 1000, '0.02'), basis, priorEvents: between(0, 1_000_000, '5') }),
-    followUpMonths: above(0, 1200, '24').nullable().optional(),
-    adjudication: z
-      .strictObject({
-        confirmed: whole(0, 1_000_000, '120'),
-        refuted: whole(0, 1_000_000, '8'),
-        medianLagDays: above(0, 36_525, '45'),
-      })
-      .optional(),
-  })
-  .nullable();
-
-const milestoneBase = {
-  code: z
-    .string()
-    .trim()
-    .min(1, 'Give a short code, for example IA.')
-    .max(40, 'At most 40 characters.')
-    .regex(/^[^\p{Cc}]*$/u, 'Write it on one line.'),
-  name: z
-    .string()
-    .trim()
-    .min(1, 'Give the milestone a name, for example Interim analysis.')
-    .max(200, 'At most 200 characters.')
-    .regex(/^[^\p{Cc}]*$/u, 'Write it on one line.'),
-  plannedOn: planDate.nullable().optional(),
+/** What a figure looks like, said where there is none or none that can be read. */
+const EXAMPLES: Record<string, string> = {
+  target: '1200',
+  meanPerMonth: '0.55',
+  cv: '0.8',
+  months: '12',
+  fraction: '0.5',
+  count: '288',
+  medianMonths: '20',
+  shape: '1.1',
+  cureFraction: '0.1',
+  priorEvents: '5',
+  perMonth: '0.02',
+  followUpMonths: '24',
+  draws: '10000',
+  seed: '1',
+  horizonMonths: '120',
 };
 
-export const milestoneSchema = z.discriminatedUnion(
-  'kind',
-  [
-    z.strictObject({ ...milestoneBase, kind: z.literal('randomised'), count: whole(1, 1_000_000, '1200') }),
-    z.strictObject({ ...milestoneBase, kind: z.literal('events'), count: whole(1, 1_000_000, '288') }),
-    z.strictObject({ ...milestoneBase, kind: z.literal('follow-up'), months: between(0, 1200, '12') }),
-    z.strictObject({
-      ...milestoneBase,
-      kind: z.literal('all-of'),
-      of: z.array(z.string()).min(1, 'Choose the milestones that have to be reached.').max(50),
-    }),
-  ],
-  'Choose what the milestone waits for.',
-);
+/** The study file's own words, except where a form can say more. */
+const sectionWords: z.core.$ZodErrorMap = (issue) => {
+  const field = String(issue.path?.findLast((part) => typeof part === 'string') ?? '');
+  if (issue.code === 'invalid_type' && EXAMPLES[field]) return `Give a number, for example ${EXAMPLES[field]}.`;
+  if (issue.code === 'too_small' && field === 'of') return 'Choose the milestones that have to be reached.';
+  return plainWords(issue);
+};
 
-type Parts = ReadonlyMap<string, readonly string[]>;
+const stepOf = (part: string): string | number =>
+  /^\d+$/.test(part) ? Number(part) : part.replaceAll('~1', '/').replaceAll('~0', '~');
 
-/** Whether following a milestone's parts leads back to it. */
-function leadsBack(parts: Parts, start: string, at = start, seen = new Set<string>()): boolean {
-  return (parts.get(at) ?? []).some((part) => {
-    if (part === start) return true;
-    if (seen.has(part)) return false;
-    seen.add(part);
-    return leadsBack(parts, start, part, seen);
+/** A part of the study file as a section of the plan: checked by the contract's own schema, every fault at once and in plain words. */
+function section<T extends z.ZodType>(part: T, further: (value: unknown) => StudyFileFault[]) {
+  return z.unknown().transform((value, context): z.output<T> => {
+    const parsed = part.safeParse(value, { error: sectionWords });
+    const own = further(value);
+    const said = new Set(own.map(({ pointer }) => pointer));
+    const plain = parsed.success ? [] : schemaFaults(parsed.error).filter(({ pointer }) => !said.has(pointer));
+    const faults = [...plain, ...own];
+    for (const { pointer, detail } of faults)
+      context.addIssue({ code: 'custom', path: pointer.split('/').slice(1).map(stepOf), message: detail });
+    return parsed.success ? parsed.data : z.NEVER;
   });
 }
 
-/** Codes given twice, parts that no milestone has, circles. */
-function refuseTangles(milestones: z.infer<typeof milestoneSchema>[], context: z.RefinementCtx): void {
-  const refuse = (path: PropertyKey[], message: string): void => context.addIssue({ code: 'custom', path, message });
-  const parts: Parts = new Map(milestones.map((one) => [one.code, one.kind === 'all-of' ? one.of : []]));
-  milestones.forEach((milestone, place) => {
-    if (milestones.findIndex((other) => other.code === milestone.code) < place)
-      refuse([place, 'code'], `${milestone.code} is another milestone’s code already. Give this one its own.`);
-    if (milestone.kind !== 'all-of') return;
-    if (milestone.of.some((part) => !parts.has(part)))
-      refuse([place, 'of'], 'One of its parts is no milestone of this plan. Choose among those above.');
-    else if (leadsBack(parts, milestone.code))
-      refuse([place, 'of'], 'It waits for itself in a circle. Leave one part out.');
+/** Checks of the whole file, for what one part of it can tell; pointers begin at that part. */
+const faultsWithin = (part: string, faults: StudyFileFault[]): StudyFileFault[] =>
+  faults
+    .filter(({ pointer }) => pointer.startsWith(part))
+    .map(({ pointer, detail }) => ({ pointer: pointer.slice(part.length), detail }));
+
+function familyFaults(events: unknown): StudyFileFault[] {
+  const family = asText(asMembers(asMembers(events).model).family);
+  if (family === null || (OFFERED_FAMILIES as readonly string[]).includes(family)) return [];
+  return [{ pointer: '/model/family', detail: 'Choose exponential or weibull.' }];
+}
+
+/** A file may leave names out; on the screens a milestone is called by its own. */
+function nameFaults(milestones: unknown): StudyFileFault[] {
+  return asList(milestones).flatMap((milestone, place) => {
+    const { name } = asMembers(milestone);
+    return name === undefined || (typeof name === 'string' && name.trim() === '')
+      ? [{ pointer: `/${place}/name`, detail: 'Give the milestone a name, for example Interim analysis.' }]
+      : [];
   });
 }
 
-export const milestonesSection = z
-  .array(milestoneSchema)
-  .min(1, 'Add at least one milestone: a forecast is a forecast of something.')
-  .max(50, 'At most 50 milestones.')
-  .superRefine(refuseTangles);
-
-export const simulationSection = z.strictObject({
-  draws: whole(100, 1_000_000, '10000'),
-  seed: whole(0, 4_294_967_295, '1'),
-  horizonMonths: whole(1, 600, '120'),
-});
+const file = studyFileSchema.shape;
 
 export const SECTION_SCHEMAS = {
-  enrolment: enrolmentSection,
-  events: eventsSection,
-  milestones: milestonesSection,
-  simulation: simulationSection,
+  enrolment: section(file.enrolment.omit({ sites: true, screening: true }), (enrolment) =>
+    faultsWithin('/enrolment', siteFaults({ enrolment })),
+  ),
+  events: section(file.events.unwrap().omit({ subjects: true, aggregate: true }).nullable(), (events) => [
+    ...familyFaults(events),
+    ...faultsWithin('/events', eventFaults({ events: events && { ...asMembers(events), subjects: [] } })).filter(
+      ({ pointer }) => pointer.startsWith('/model'),
+    ),
+  ]),
+  milestones: section(file.milestones, (milestones) => [
+    ...nameFaults(milestones),
+    ...faultsWithin('/milestones', milestoneFaults({ milestones, events: {} })),
+  ]),
+  simulation: section(file.simulation.unwrap(), () => []),
 } as const satisfies Record<PlanSection, z.ZodType>;
-
-export const planSchema = z.strictObject(SECTION_SCHEMAS);
 
 /** A section as the draft has it: what stands there (null: nothing yet) and how often it was saved. */
 const sectionState = z.strictObject({ value: z.unknown(), version: z.number() });
@@ -267,14 +182,14 @@ export const planViewSchema = z.strictObject({
 });
 export type PlanView = z.infer<typeof planViewSchema>;
 
-const sectionBody = <S extends PlanSection, T extends z.ZodType>(section: S, value: T) =>
-  z.strictObject({ section: z.literal(section), version: z.number().int().min(0), value });
+const sectionBody = <S extends PlanSection, T extends z.ZodType>(name: S, value: T) =>
+  z.strictObject({ section: z.literal(name), version: z.number().int().min(0), value });
 
 export const savePlanSectionBody = z.discriminatedUnion('section', [
-  sectionBody('enrolment', enrolmentSection),
-  sectionBody('events', eventsSection),
-  sectionBody('milestones', milestonesSection),
-  sectionBody('simulation', simulationSection),
+  sectionBody('enrolment', SECTION_SCHEMAS.enrolment),
+  sectionBody('events', SECTION_SCHEMAS.events),
+  sectionBody('milestones', SECTION_SCHEMAS.milestones),
+  sectionBody('simulation', SECTION_SCHEMAS.simulation),
 ]);
 export type SavePlanSectionBody = z.infer<typeof savePlanSectionBody>;
 
