@@ -1,3 +1,4 @@
+import { parse as parseTolerantly, type ParseError } from 'jsonc-parser';
 import { unsupportedParts } from '../engine/supported';
 import type { Study } from '../engine/types';
 import { eventFaults } from './event-checks';
@@ -25,8 +26,8 @@ export function parseStudyFile(input: Uint8Array | string): ParsedStudyFile {
   let data: unknown;
   try {
     data = JSON.parse(text.startsWith('\uFEFF') ? text.slice(1) : text);
-  } catch (error) {
-    return refused(notJson(text, error as Error));
+  } catch {
+    return refused(notJson(text));
   }
   return checkStudy(data);
 }
@@ -60,10 +61,12 @@ function decode(bytes: Uint8Array): string | { detail: string } {
   }
 }
 
-function notJson(text: string, error: Error): string {
+/** Where the text stops being JSON: the platform's own message does not always say. */
+function notJson(text: string): string {
   if (text.trim() === '') return 'The file is empty. Give a study file as JSON.';
-  const position = /position (\d+)/.exec(error.message)?.[1];
-  const before = position === undefined ? text : text.slice(0, Number(position));
+  const faults: ParseError[] = [];
+  parseTolerantly(text, faults, { disallowComments: true });
+  const before = text.slice(0, faults[0]?.offset ?? text.length);
   const line = before.split('\n').length;
   const column = before.length - before.lastIndexOf('\n');
   return `The file is not JSON: it stops making sense at line ${line}, column ${column}.`;

@@ -23,8 +23,8 @@ const isoMonth = z
 
 const code = z.string().min(1).max(40);
 const positiveRate = z.number().positive().max(LIMITS.ratePerMonth);
-const count = z.int('Give a whole number.').min(0).max(LIMITS.count);
-const target = z.int('Give a whole number.').min(1).max(LIMITS.count);
+const count = z.int().min(0).max(LIMITS.count);
+const target = z.int().min(1).max(LIMITS.count);
 const months = z.number().min(0).max(LIMITS.months);
 const positiveMonths = z.number().positive().max(LIMITS.months);
 const share = z.number().min(0).max(1);
@@ -143,8 +143,8 @@ const milestoneSchema = z.discriminatedUnion(
 );
 
 const simulationSchema = z.strictObject({
-  draws: z.int('Give a whole number.').min(1).max(LIMITS.draws).default(10_000),
-  seed: z.int('Give a whole number.').min(0).max(4_294_967_295).default(1),
+  draws: z.int().min(1).max(LIMITS.draws).default(10_000),
+  seed: z.int().min(0).max(4_294_967_295).default(1),
   horizonMonths: z.number().min(1).max(LIMITS.horizonMonths).default(120),
 });
 
