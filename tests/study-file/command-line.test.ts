@@ -66,7 +66,7 @@ describe('npm run -s forecast', () => {
   it('ends with 2 and one problem object that lists every fault', () => {
     writeFileSync(
       join(folder, 'bad.json'),
-      JSON.stringify(exampleWith(['/enrolment/target', -1], ['/milestones/1/code', 'IA'])),
+      JSON.stringify(exampleWith(['/enrolment/target', -1], ['/milestones/2/code', 'IA'])),
     );
     const { code, out, err } = forecast([join(folder, 'bad.json')]);
     expect(code).toBe(2);
