@@ -2,6 +2,7 @@ import { actAsOwner } from '@/scripts/demo/acting';
 import { generateTrial } from '@/scripts/demo/generate';
 import { giveRole, makePerson } from '@/scripts/demo/people';
 import { PlanKeeper } from '@/scripts/demo/plans';
+import { planRelease } from '@/scripts/demo/publishing';
 import { enterSite, planLogActs, planSiteActs } from '@/scripts/demo/sites';
 import type { DemoCast } from '@/scripts/demo/study-301';
 import { Timeline } from '@/scripts/demo/timeline';
@@ -75,6 +76,14 @@ export async function replaySmallStudy(cast: DemoCast, lastMonth: string, now: s
     for (const entry of trial.log.filter((month) => month.site === site.code))
       planLogActs(timeline, person, SMALL.code, entry);
   }
+  const month = addMonths(lastMonth, -1);
+  planRelease(timeline, {
+    cast,
+    code: SMALL.code,
+    month,
+    trial: null,
+    note: 'Eight sites, enrolling as planned. There is no events target.',
+  });
   return timeline.play(now);
 }
 

@@ -1,4 +1,5 @@
-import { generateTrial } from '@/scripts/demo/generate';
+import { type DemoTrial, generateTrial } from '@/scripts/demo/generate';
+import { planReading, planRelease, planRule } from '@/scripts/demo/publishing';
 import { giveRole, makePerson, type DemoPerson } from '@/scripts/demo/people';
 import { PlanKeeper } from '@/scripts/demo/plans';
 import { openStudy } from '@/scripts/demo/studies-small';
@@ -90,5 +91,36 @@ export async function replayLargeStudy(cast: DemoCast, lastMonth: string, now: s
       'Fewer patients are lost to follow-up than the protocol assumed.',
     ),
   );
+  planReleases(timeline, cast, trial);
   return timeline.play(now);
+}
+
+/** The months whose data were published, counted from the first, with the statistician's words. */
+const RELEASES: [month: number, note: string][] = [
+  [6, 'First forecast, from seven months of data. The bands are wide: few events so far, and the plan still weighs.'],
+  [8, 'Enrolment runs a little under plan; events come as the protocol assumed.'],
+  [10, 'The sites of Portugal and Romania open later than planned, which moves the last patient. Events are on plan.'],
+  [11, 'Loss to follow-up is lower than assumed, and the plan now says so. The analyses move little.'],
+  [12, 'Another month of steady enrolment. The last three of the late sites are still to open.'],
+];
+
+function planReleases(timeline: Timeline, cast: DemoCast, trial: DemoTrial): void {
+  const sponsor = { roles: ['sponsor' as const], personIds: [] };
+  const rulesAt = `${trial.months[7]}-20T09:00:00.000Z`;
+  planRule(timeline, cast, CODE, rulesAt, {
+    milestoneCode: 'IA',
+    condition: { kind: 'slips', days: 7 },
+    recipients: sponsor,
+  });
+  planRule(timeline, cast, CODE, rulesAt, {
+    milestoneCode: 'LPI',
+    condition: { kind: 'nears', withinWeeks: 40, probability: 0.8 },
+    recipients: { roles: ['sponsor', 'manager'], personIds: [] },
+  });
+  planRule(timeline, cast, CODE, rulesAt, { milestoneCode: 'IA', condition: { kind: 'reached' }, recipients: sponsor });
+  RELEASES.forEach(([index, note], place) => {
+    const month = trial.months[index]!;
+    planRelease(timeline, { cast, code: CODE, month, trial, note });
+    if (place < RELEASES.length - 1) planReading(timeline, cast, CODE, month, place + 1);
+  });
 }
