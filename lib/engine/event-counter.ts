@@ -28,12 +28,12 @@ export function createEventCounter(
   }
   const upTo = new Int32Array(days);
   const sameDay = new Float64Array(bounds.most + observed.length);
-  let loaded = new Float64Array(0);
+  let loaded: Float64Array = new Float64Array(0);
   let loadedCount = 0;
 
   return {
     load(moments, count) {
-      loaded = moments as Float64Array<ArrayBuffer>;
+      loaded = moments;
       loadedCount = count;
       upTo.set(base);
       for (let place = 0; place < count; place += 1) {

@@ -2,8 +2,7 @@
  * The forecast: prepare once, simulate in chunks of draws, summarise. The answer depends on the study, the seed and the number
  * of draws and on nothing else: chunk c uses the random streams of c, so any number of threads gives the same bytes.
  */
-import { monthEnd, monthOrdinal, toDayNumber } from './calendar';
-import { DAYS_PER_MONTH } from './calendar';
+import { DAYS_PER_MONTH, monthEnd, monthOrdinal, toDayNumber } from './calendar';
 import { type EnrolmentModel, prepareEnrolment } from './enrolment-model';
 import { type EnrolmentSchedule, scheduleEnrolment } from './enrolment-schedule';
 import { type EventsModel, prepareEvents } from './events-model';
@@ -40,11 +39,11 @@ export interface ChunkResult {
   chunkIndex: number;
   draws: number;
   /** Moments, milestone by milestone: place m · draws + d; Infinity: not within the horizon. */
-  milestoneMoments: Float64Array;
+  milestoneMoments: Float64Array<ArrayBuffer>;
   /** Randomised so far, observed ones included, month by month: place month · draws + d. */
-  randomisedAtMonthEnds: Int32Array;
+  randomisedAtMonthEnds: Int32Array<ArrayBuffer>;
   /** Events so far, observed ones included, in the same layout; empty without an events part. */
-  eventsAtMonthEnds: Int32Array;
+  eventsAtMonthEnds: Int32Array<ArrayBuffer>;
 }
 
 /**
@@ -100,7 +99,7 @@ export function simulateChunk(prepared: PreparedForecast, chunkIndex: number): C
 }
 
 /** The buffers of a chunk, for the transfer list of `postMessage`. */
-export function transferables(chunk: ChunkResult): ArrayBufferLike[] {
+export function transferables(chunk: ChunkResult): ArrayBuffer[] {
   return [chunk.milestoneMoments.buffer, chunk.randomisedAtMonthEnds.buffer, chunk.eventsAtMonthEnds.buffer];
 }
 

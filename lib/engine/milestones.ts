@@ -1,7 +1,6 @@
-import { monthEnd, toDayNumber, toMonthOrdinal } from './calendar';
+import { DAYS_PER_MONTH, monthEnd, toDayNumber, toMonthOrdinal } from './calendar';
 import type { EventsModel } from './events-model';
 import type { Milestone, Study } from './types';
-import { DAYS_PER_MONTH } from './calendar';
 
 /** A milestone with what the data already say of it. Days are day numbers, moments days after the end of the cut-off day. */
 export interface PreparedMilestone {

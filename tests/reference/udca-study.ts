@@ -1,5 +1,5 @@
-import { toDayNumber, toIsoDate } from '../../lib/engine/calendar';
-import type { Study, Subject } from '../../lib/engine/types';
+import { toDayNumber, toIsoDate } from '@/lib/engine/calendar';
+import type { Study, Subject } from '@/lib/engine/types';
 
 /** One patient of the UDCA trial as `udca_patients.csv` has it: days from entry to the first endpoint, or to the last visit. */
 export interface UdcaPatient {
