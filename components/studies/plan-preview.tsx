@@ -72,10 +72,21 @@ export function PlanPreview({ forecast, waitsFor, error, atWork, standIn }: Plan
             </TableBody>
           </Table>
           {doubts.length > 0 && (
-            <Notice tone="caution" title="Worth a second look." className="mt-3">
-              {doubts.map((doubt) => (
-                <p key={doubt}>{doubt}</p>
-              ))}
+            <Notice tone="caution" title="Worth a second look" className="mt-3">
+              <ul className="space-y-2">
+                {doubts.map((doubt) => (
+                  <li key={doubt}>{doubt}</li>
+                ))}
+              </ul>
+            </Notice>
+          )}
+          {forecast.cautions.length > 0 && (
+            <Notice tone="caution" title="Cautions" className="mt-3">
+              <ul className="space-y-2">
+                {forecast.cautions.map(({ code, text }) => (
+                  <li key={`${code} ${text}`}>{text}</li>
+                ))}
+              </ul>
             </Notice>
           )}
         </>

@@ -276,7 +276,7 @@ export function secondLook(milestone: MilestoneForecast): string | null {
   if (!plannedOn || probabilityByPlanned === null || probabilityByPlanned >= DOUBTFUL_BELOW) return null;
   const even = quantiles['0.5'];
   return (
-    `On its own figures the plan meets ${formatDate(plannedOn)} for ${milestone.name ?? milestone.code} in ${formatProbability(probabilityByPlanned)} of futures. ` +
+    `${milestone.name ?? milestone.code}: on its own figures the plan meets ${formatDate(plannedOn)} in ${formatProbability(probabilityByPlanned)} of futures. ` +
     (even
       ? `A date with an even chance is ${formatDate(even)}.`
       : 'In most futures it is not reached within the horizon.')

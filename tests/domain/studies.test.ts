@@ -231,7 +231,7 @@ describe('milestones', () => {
 
   it('a plan that hardly meets its own date gets a second look, from just under one in five', () => {
     expect(secondLook(forecast(0.14))).toBe(
-      'On its own figures the plan meets 31 Jan 2029 for Interim analysis in 14\u00a0% of futures. A date with an even chance is 4 Mar 2029.',
+      'Interim analysis: on its own figures the plan meets 31 Jan 2029 in 14\u00a0% of futures. A date with an even chance is 4 Mar 2029.',
     );
     expect(secondLook(forecast(0.2))).toBeNull();
     expect(secondLook(forecast(null))).toBeNull();
