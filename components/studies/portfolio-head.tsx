@@ -82,7 +82,7 @@ export function PortfolioHead({ portfolio, order, isOwner, orderHref }: Portfoli
       action={
         (isOwner || forecasts) && (
           <>
-            {isOwner && <ButtonLink href="/organisation">Set up a study</ButtonLink>}
+            {isOwner && <ButtonLink href="/organisation#set-up">Set up a study</ButtonLink>}
             {forecasts && (
               <p className="text-13 text-ink-soft">
                 {order === 'late' &&

@@ -65,7 +65,7 @@ export default async function OrganisationPage() {
           </Table>
         )}
       </Section>
-      <Section title="Set up a study">
+      <Section title="Set up a study" id="set-up">
         <CreateStudyForm />
       </Section>
       <Section title="Owners">
