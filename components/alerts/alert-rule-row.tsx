@@ -109,7 +109,7 @@ export function AlertRuleRow({ code, rule, rules, onAskDelete }: Props) {
       <Cell>{recipientWords(rule, rules.readers)}</Cell>
       <Cell>
         {rule.isActive ? 'on' : 'switched off'}
-        {rule.raised > 0 && <SubLine>has spoken {formatQuantity(rule.raised, 'time')}</SubLine>}
+        {rule.raised > 0 && <SubLine>spoke {rule.raised === 1 ? 'once' : formatQuantity(rule.raised, 'time')}</SubLine>}
       </Cell>
       <Cell className="text-right">
         <Button variant="quiet" size="small" onClick={() => setOpen(true)}>

@@ -17,8 +17,11 @@ export function QuoteSentences({ sentences }: Props) {
   return (
     <ul>
       {sentences.map(({ code, text }) => (
-        <li key={code} className="border-b border-rule py-3 last:border-b-0 md:flex md:items-start md:gap-5">
-          <p className="max-w-measure flex-1">{text}</p>
+        <li
+          key={code}
+          className="border-b border-rule py-3 last:border-b-0 md:flex md:items-start md:justify-between md:gap-5"
+        >
+          <p className="max-w-[84ch]">{text}</p>
           <div className="mt-2 flex-none md:mt-0 md:w-40">
             <Button variant="second" size="small" onClick={() => copy(code, text)}>
               Copy the sentence

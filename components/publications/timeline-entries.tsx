@@ -18,13 +18,13 @@ export function TimelineEntries({ publication, previous }: Pick<Timeline, 'publi
   const { milestones } = publication.content;
   const marks = cautionMarksOf(publication.content);
   return (
-    <ol className="border-t border-ink">
+    <ol className="@container border-t border-ink">
       {inOrderOfTime(milestones).map((milestone) => (
         <Entry
           key={milestone.code}
           milestone={milestone}
           waiting={waitsFor(milestone, milestones)}
-          marks={milestone.reachedOn ? '' : (marks[milestone.code] ?? '')}
+          marks={marks[milestone.code] ?? ''}
           moved={movedSince(previous, milestone, publication.publishedAt.slice(0, 10))}
         />
       ))}
@@ -50,13 +50,13 @@ interface EntryProps {
 function Entry({ milestone, waiting, marks, moved }: EntryProps) {
   const words = milestoneWords(milestone);
   return (
-    <li className="border-b border-rule py-3 md:grid md:grid-cols-[152px_minmax(0,1fr)_176px] md:items-baseline md:gap-x-3">
+    <li className="border-b border-rule py-3 @min-[620px]:grid @min-[620px]:grid-cols-[144px_minmax(0,1fr)_172px] @min-[620px]:items-baseline @min-[620px]:gap-x-3">
       <p>
         <Mark kind={markOfMilestone(milestone.kind)} /> <b>{nameOfMilestone(milestone)}</b>
         <span className="block pl-4 text-13 text-ink-soft">{waiting}</span>
       </p>
-      <div className="mt-1 md:mt-0">
-        <p className="font-title text-24 tracking-[-0.01em] lg:text-34">
+      <div className="mt-1 @min-[620px]:mt-0">
+        <p className="font-title text-24 tracking-[-0.01em] @min-[740px]:text-34">
           {words.range}
           <span className="font-text text-15 tracking-normal whitespace-nowrap text-ink-soft">
             {words.isRange && <> &nbsp;{formatPercent(0.8)}</>}
@@ -65,7 +65,7 @@ function Entry({ milestone, waiting, marks, moved }: EntryProps) {
         </p>
         {words.exact && <p>{words.exact}</p>}
       </div>
-      <div className="mt-1 md:mt-0">
+      <div className="mt-1 @min-[620px]:mt-0">
         {words.planned && (
           <p className="whitespace-nowrap">
             <Mark kind="planned" /> Planned {words.planned}

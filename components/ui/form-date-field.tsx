@@ -13,15 +13,18 @@ interface FormDateFieldProps<Values extends FieldValues> extends Omit<
 
 /** A date field tied to a form by name; its value in the form is the ISO date. */
 export function FormDateField<Values extends FieldValues>({ control, name, ...rest }: FormDateFieldProps<Values>) {
-  const { field, fieldState } = useController({ control, name });
+  const {
+    field: { ref, name: fieldName, value, onChange, onBlur },
+    fieldState,
+  } = useController({ control, name });
   return (
     <DateField
       {...rest}
-      name={field.name}
-      ref={field.ref}
-      value={String(field.value ?? '')}
-      onChange={field.onChange}
-      onBlur={field.onBlur}
+      name={fieldName}
+      ref={ref}
+      value={String(value ?? '')}
+      onChange={onChange}
+      onBlur={onBlur}
       error={fieldState.error?.message}
     />
   );

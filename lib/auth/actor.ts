@@ -1,5 +1,4 @@
 import { systemClock } from '../clock';
-import { NotSignedInError } from '../errors';
 import { getAuth } from './auth';
 import type { Actor } from './scope';
 import { SESSION_ABSOLUTE_SECONDS } from './session-limits';
@@ -12,10 +11,4 @@ export async function findActor(headers: Headers): Promise<Actor | null> {
   const ageSeconds = (systemClock.now().getTime() - new Date(found.session.createdAt).getTime()) / 1000;
   if (ageSeconds > SESSION_ABSOLUTE_SECONDS) return null;
   return { personId: found.user.id, name: found.user.name, email: found.user.email };
-}
-
-export async function getActor(headers: Headers): Promise<Actor> {
-  const actor = await findActor(headers);
-  if (!actor) throw new NotSignedInError();
-  return actor;
 }

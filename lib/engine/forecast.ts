@@ -12,7 +12,6 @@ import { startTally, summariseTally, tallyChunk } from './summarise';
 import type { Forecast, Study } from './types';
 
 export { serialiseForecast } from './serialise';
-export { ENGINE_VERSION } from './summarise';
 
 /** Draws per chunk: the unit of work of a thread, and of the random streams. */
 export const CHUNK_DRAWS = 250;
