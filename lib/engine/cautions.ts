@@ -33,6 +33,8 @@ export function raiseCautions(
 }
 
 function siteCautions({ study, schedule, enrolment }: PreparedForecast): Caution[] {
+  // With the target met nobody is simulated, whatever the sites' state.
+  if (schedule.remaining === 0) return [];
   const cautions: Caution[] = [];
   const { sites } = study.enrolment;
   const overdue = schedule.overdueSites.map((place) => sites[place]?.code ?? '');

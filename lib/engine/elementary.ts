@@ -17,6 +17,12 @@ const HIGH = WORDS[1] === 0x3ff00000 ? 1 : 0;
 export const LN2 = Math.LN2;
 const LN2_HIGH = 6.9314718036912381649e-1;
 const LN2_LOW = 1.90821492927058770002e-10;
+/** 2^k at place k + 1022. */
+const POWERS_OF_TWO = Float64Array.from({ length: 2046 }, (_, place) => {
+  DOUBLE[0] = 1;
+  WORDS[HIGH] = (place + 1) << 20;
+  return DOUBLE[0];
+});
 const TWO_54 = 18_014_398_509_481_984;
 
 /**
@@ -27,22 +33,15 @@ const TWO_54 = 18_014_398_509_481_984;
 export function ln(x: number): number {
   if (!(x > 0)) return x === 0 ? -Infinity : NaN;
   if (x === Infinity) return Infinity;
-  let exponent = -1023;
   DOUBLE[0] = x;
-  let high = WORDS[HIGH] as number;
-  if (high < 0x00100000) {
-    // Subnormal: scaled into the normal range first.
-    DOUBLE[0] = x * TWO_54;
-    high = WORDS[HIGH] as number;
-    exponent -= 54;
-  }
+  const high = WORDS[HIGH] as number;
+  // The ends of the range are moved inside it first.
+  if (high < 0x00100000) return ln(x * TWO_54) - 54 * LN2;
+  if (high >= 0x7fd00000) return ln(x * 0.25) + 2 * LN2;
   // x = 2^exponent (1 + f) with 1 + f between sqrt(1/2) and sqrt(2).
-  exponent += high >> 20;
-  high &= 0x000fffff;
-  const upper = (high + 0x95f64) & 0x100000;
-  WORDS[HIGH] = high | (upper ^ 0x3ff00000);
-  exponent += upper >> 20;
-  const f = (DOUBLE[0] as number) - 1;
+  const upper = ((high & 0x000fffff) + 0x95f64) & 0x100000;
+  const exponent = (high >> 20) + (upper >> 20) - 1023;
+  const f = x * (POWERS_OF_TWO[1022 - exponent] as number) - 1;
   const s = f / (2 + f);
   const z = s * s;
   const w = z * z;
@@ -77,20 +76,10 @@ export function exp(x: number): number {
           (-2.77777777770155933842e-3 +
             t * (6.61375632143793436117e-5 + t * (-1.6533902205465251539e-6 + t * 4.13813679705723846039e-8))));
   const y = 1 - (low - (r * c) / (2 - c) - high);
-  if (power > -1022 && power < 1023) {
-    DOUBLE[0] = y;
-    WORDS[HIGH] = (WORDS[HIGH] as number) + (power << 20);
-    return DOUBLE[0] as number;
-  }
+  if (power > -1022 && power < 1023) return y * (POWERS_OF_TWO[power + 1022] as number);
   // At both ends of the range in two steps, so that neither factor leaves it.
   const half = power >> 1;
-  return y * powerOfTwo(half) * powerOfTwo(power - half);
-}
-
-function powerOfTwo(exponent: number): number {
-  DOUBLE[0] = 1;
-  WORDS[HIGH] = (exponent + 1023) << 20;
-  return DOUBLE[0] as number;
+  return y * (POWERS_OF_TWO[half + 1022] as number) * (POWERS_OF_TWO[power - half + 1022] as number);
 }
 
 /**

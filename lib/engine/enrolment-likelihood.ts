@@ -105,7 +105,7 @@ export function maximiseEnrolment(sites: SiteCounts): EnrolmentMaximum | null {
     if ((sites.exposures[site] as number) <= 0) continue;
     const count = sites.counts[site] as number;
     const expected = mean * (sites.exposures[site] as number) * (sites.ratios[site] as number);
-    excess += (count - expected) ** 2 - count;
+    excess += (count - expected) * (count - expected) - count;
     expectedSquares += expected * expected;
   }
   if (patients === 0 || excess <= 0) {

@@ -87,8 +87,10 @@ export function enrolmentPosterior(
   prior: { lnMean: NormalPrior; lnShape: NormalPrior },
 ): PosteriorGrid {
   const logLikelihood = enrolmentLogLikelihood(sites);
-  const logPrior = (value: number, { mean, sd }: NormalPrior): number =>
-    -0.5 * ((value - mean) / sd) ** 2 - ln(sd) - 0.5 * ln(2 * Math.PI);
+  const logPrior = (value: number, { mean, sd }: NormalPrior): number => {
+    const distance = (value - mean) / sd;
+    return -0.5 * distance * distance - ln(sd) - 0.5 * ln(2 * Math.PI);
+  };
   return posteriorGrid(
     (lnMean, lnShape) =>
       logLikelihood(exp(lnMean), exp(lnShape)) + logPrior(lnMean, prior.lnMean) + logPrior(lnShape, prior.lnShape),

@@ -109,11 +109,12 @@ export const weibullFamily: SurvivalFamily = {
     const constant =
       (precision > 0 ? 0.5 * ln(precision / (2 * Math.PI)) : 0) - ln(LN_SHAPE_SD) - 0.5 * ln(2 * Math.PI);
     const grid = posteriorGrid(
-      (lnMedian, lnShape) =>
-        logLikelihood(lnMedian, lnShape) -
-        0.5 * precision * (lnMedian - plannedLnMedian) ** 2 -
-        0.5 * ((lnShape - plannedLnShape) / LN_SHAPE_SD) ** 2 +
-        constant,
+      (lnMedian, lnShape) => {
+        const fromMedian = lnMedian - plannedLnMedian;
+        const fromShape = (lnShape - plannedLnShape) / LN_SHAPE_SD;
+        const squares = precision * fromMedian * fromMedian + fromShape * fromShape;
+        return logLikelihood(lnMedian, lnShape) - 0.5 * squares + constant;
+      },
       { x: plannedLnMedian, y: plannedLnShape },
     );
     return { logEvidence: grid.logIntegral, draw: (generator, out) => drawFromGrid(grid, generator, out) };

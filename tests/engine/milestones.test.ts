@@ -303,4 +303,22 @@ describe('events', () => {
       );
     }
   });
+
+  it('before the first patient: events from the plan alone, or from the plan’s own uncertainty', () => {
+    const width = (family: 'exponential' | 'weibull', basis: 'plan' | 'data'): number => {
+      const study = smallStudy((draft) => {
+        draft.enrolment.sites = [site('101', { activatedOn: '2027-03-31' })];
+        withEvents(draft, [], [{ code: 'E30', kind: 'events', count: 30 }], { family, basis });
+      });
+      const forecast = runForecast(study, options);
+      expect(forecast.observed).toEqual({ randomised: 0, events: 0, withdrawn: 0, atRisk: 0 });
+      expect(forecast.fit.events).toBeNull();
+      const { quantiles } = forecast.milestones[0] ?? {};
+      return Date.parse(quantiles?.['0.9'] ?? '') - Date.parse(quantiles?.['0.1'] ?? '');
+    };
+    for (const family of ['exponential', 'weibull'] as const) {
+      expect(width(family, 'plan')).toBeGreaterThan(0);
+      expect(width(family, 'data')).toBeGreaterThan(1.2 * width(family, 'plan'));
+    }
+  });
 });
