@@ -1,10 +1,10 @@
 import { createElement } from 'react';
 import { randomUUID } from 'node:crypto';
 import { setTimeout as wait } from 'node:timers/promises';
+import { messageIdOf } from '../email/message-id';
 import { renderMail } from '../email/render';
 import { ResetMail } from '../email/templates/reset-mail';
 import { isPermanentRefusal, sendMail } from '../email/transport';
-import { env } from '../env';
 import { log } from '../log';
 
 /** The first wait lets the reply go first; the later ones give a relay that was busy time to come back. */
@@ -24,7 +24,7 @@ export async function sendResetMail(user: Recipient, url: string): Promise<void>
 }
 
 async function deliver(user: Recipient, url: string): Promise<void> {
-  const messageId = `<${randomUUID()}@${new URL(env().origin).hostname}>`;
+  const messageId = messageIdOf(randomUUID());
   for (const [place, milliseconds] of WAITS_MS.entries()) {
     await wait(milliseconds);
     try {

@@ -63,10 +63,10 @@ export function alertMailProps(alert: AlertContent, around: Around): AlertMailPr
       note: publication.note,
       publishedBy: around.publishedBy,
     },
-    headline: alert.headline,
+    news: alert.condition.kind === 'nears' ? alert.headline : null,
     milestone: {
       name: nameOfMilestone(milestone),
-      waitsFor: waitsFor(milestone, milestones),
+      waitsFor: `${milestone.count === undefined ? '' : 'the '}${waitsFor(milestone, milestones)}`,
       kind: milestone.kind,
       words: milestoneWords(milestone),
     },

@@ -1,7 +1,7 @@
-import { createHash, randomUUID } from 'node:crypto';
+import { randomUUID } from 'node:crypto';
 import type { CommandContext } from '../audit/record';
-import { env } from '../env';
 import { enqueue } from '../jobs/enqueue';
+import { messageIdOf } from './message-id';
 import type { MailTemplate } from './schema';
 
 export interface MailToQueue {
@@ -36,12 +36,6 @@ export async function queueMail(context: CommandContext, mail: MailToQueue): Pro
     ],
   );
   if (made) await enqueue(context.em, 'mail-deliver', { organisationId: mail.organisationId, messageId: id });
-}
-
-/** The same for the same message at every attempt, so that a relay or a mailbox sees a second copy for what it is. */
-function messageIdOf(key: string): string {
-  const { hostname } = new URL(env().origin);
-  return `<${createHash('sha256').update(key).digest('hex').slice(0, 40)}@${/[a-z]/i.test(hostname) ? hostname : 'kalends.invalid'}>`;
 }
 
 /** A header is one line: what a name or a title brings along in control characters becomes a space. */

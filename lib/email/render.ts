@@ -13,7 +13,9 @@ export async function renderMail(message: ReactElement): Promise<RenderedMail> {
       plainText: true,
       htmlToTextOptions: {
         wordwrap: TEXT_WIDTH,
-        selectors: [{ selector: 'a', options: { linkBrackets: false, hideLinkHrefIfSameAsText: true } }],
+        selectors: [
+          { selector: 'td[data-apart]', format: 'block', options: { leadingLineBreaks: 2, trailingLineBreaks: 1 } },
+        ],
       },
     }),
   };

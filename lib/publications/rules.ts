@@ -128,14 +128,22 @@ function observedMonthly(
   return [...days.map((day) => ({ monthEnd: day, randomised: randomisedBy(day), events: eventsBy(day) })), last];
 }
 
-/** Milestone code -> the footnote marks of the cautions that touch it; a caution without milestones touches all. */
-export function cautionMarksOf({ cautions, milestones }: PublishedForecast): Record<string, string> {
+/**
+ * Milestone code -> the footnote marks of the cautions that touch it; a caution without milestones touches all. A day that
+ * is known is no forecast, and needs none.
+ */
+export function cautionMarksOf({
+  cautions,
+  milestones,
+}: Pick<PublishedForecast, 'cautions' | 'milestones'>): Record<string, string> {
   return Object.fromEntries(
-    milestones.map(({ code }) => [
+    milestones.map(({ code, reachedOn }) => [
       code,
       cautions
         .flatMap((caution, place) =>
-          caution.milestones.length === 0 || caution.milestones.includes(code) ? [cautionMark(place)] : [],
+          !reachedOn && (caution.milestones.length === 0 || caution.milestones.includes(code))
+            ? [cautionMark(place)]
+            : [],
         )
         .join('\u00a0'),
     ]),
@@ -248,7 +256,8 @@ export function quotation({ number, publishedOn, content }: Quoted, milestone: M
   if (milestone.reachedOn) return `${what}: reached on ${formatDate(milestone.reachedOn)} (${source}).`;
   const { exact, isRange } = milestoneWords(milestone);
   const cautions = content.cautions.length > 0 ? `, with ${formatQuantity(content.cautions.length, 'caution')}` : '';
-  return `${what}: forecast for ${isRange ? `${exact.replace(';', ` (${formatPercent(0.8)});`)}` : exact} (${source}${cautions}). A forecast is not a decision.`;
+  const dated = isRange ? `forecast for ${exact.replace(/;|$/, ` (${formatPercent(0.8)})$&`)}` : `forecast: ${exact}`;
+  return `${what}: ${dated} (${source}${cautions}). A forecast is not a decision.`;
 }
 
 const REASON_LENGTH = 120;

@@ -9,7 +9,8 @@ import { ActionLine, CautionBlock, FootLine, INK_SOFT, Line, MailFrame, SMALL, T
 export interface AlertMailProps {
   study: { code: string; title: string };
   publication: { number: number; publishedOn: string; dataCutoff: string; note: string; publishedBy: string };
-  headline: string;
+  /** What the range below does not say by itself. */
+  news: string | null;
   milestone: { name: string; waitsFor: string; kind: MilestoneForecast['kind']; words: MilestoneWords };
   /** `16 days later than in publication 4 (Nov 2027 to Jan 2028, median 11 Dec 2027).` */
   moved: { lead: string; rest: string } | null;
@@ -32,15 +33,15 @@ export function AlertMail(props: AlertMailProps) {
         .filter(Boolean)
         .join('. ')}
     >
-      <Line style={{ ...SMALL, padding: '20px 32px 0' }}>
+      <Line apart style={SMALL}>
         {study.code}, {study.title}
         <br />
         Publication {publication.number} of {formatDate(publication.publishedOn)}, from data to{' '}
         {formatDate(publication.dataCutoff)}
       </Line>
-      <Line style={{ padding: '20px 32px 0' }}>{props.headline}</Line>
-      <Line style={{ padding: '12px 32px 0' }}>
-        <strong>{milestone.name}</strong>, the {milestone.waitsFor}
+      {props.news && <Line apart>{props.news}</Line>}
+      <Line apart>
+        <strong>{milestone.name}</strong>, {milestone.waitsFor}
       </Line>
       <Line style={{ padding: '0 32px', fontFamily: TITLE_FACE, fontSize: '34px', lineHeight: '40px' }}>
         {words.range}
@@ -63,7 +64,7 @@ export function AlertMail(props: AlertMailProps) {
         </Line>
       )}
       {brackets && <BracketLines {...brackets} kind={milestone.kind} />}
-      <Line style={{ padding: '20px 32px 0' }}>“{publication.note}”</Line>
+      <Line apart>“{publication.note}”</Line>
       <Line style={SMALL}>{publication.publishedBy}, protocol statistician</Line>
       <ActionLine href={props.url} label="Open the timeline" beside="asks you to sign in" />
       <CautionBlock>{[...cautions, DEFERRAL_SENTENCE].join(' ')}</CautionBlock>

@@ -15,7 +15,7 @@ export function InvitationMail(props: InvitationMailProps) {
   const { organisationName, studyTitle, roleName, inviterName } = props;
   return (
     <MailFrame preview={`${inviterName}, ${organisationName}: your role is ${roleName}.`}>
-      <Line style={{ ...SMALL, padding: '20px 32px 0' }}>
+      <Line apart style={SMALL}>
         {organisationName}
         {studyTitle && (
           <>
@@ -24,17 +24,17 @@ export function InvitationMail(props: InvitationMailProps) {
           </>
         )}
       </Line>
-      <Line style={{ padding: '20px 32px 0', fontFamily: TITLE_FACE, fontSize: '24px', lineHeight: '30px' }}>
+      <Line apart style={{ fontFamily: TITLE_FACE, fontSize: '24px', lineHeight: '30px' }}>
         {inviterName} invites you
       </Line>
-      <Line style={{ padding: '8px 32px 0' }}>
+      <Line apart style={{ padding: '8px 32px 0' }}>
         {studyTitle
           ? `You are asked to take part in this study as ${roleName}.`
           : `You are asked to join ${organisationName} as ${roleName}.`}{' '}
         Kalends keeps the study’s months and forecasts when its patients and events will be in.
       </Line>
       <ActionLine href={props.url} label="Accept the invitation" beside="works once" />
-      <Line style={{ ...SMALL, padding: '12px 32px 0' }}>
+      <Line apart style={{ ...SMALL, padding: '12px 32px 0' }}>
         The link works until {formatInstant(props.expiresAt)} UTC, for {props.recipient} only.
       </Line>
       <FootLine>

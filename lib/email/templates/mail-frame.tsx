@@ -62,11 +62,20 @@ export function MailFrame({ preview, children }: MailFrameProps) {
   );
 }
 
+interface LineProps {
+  style?: CSSProperties;
+  /** Begins a paragraph: further down in the HTML, after an empty line in the plain part. */
+  apart?: boolean;
+  children: ReactNode;
+}
+
 /** One row of the sheet. */
-export function Line({ style, children }: { style?: CSSProperties; children: ReactNode }) {
+export function Line({ style, apart = false, children }: LineProps) {
   return (
     <tr>
-      <td style={{ ...TEXT, padding: '4px 32px 0', ...style }}>{children}</td>
+      <td data-apart={apart || undefined} style={{ ...TEXT, padding: apart ? '20px 32px 0' : '4px 32px 0', ...style }}>
+        {children}
+      </td>
     </tr>
   );
 }
@@ -79,7 +88,7 @@ export function ActionLine({ href, label, beside }: { href: string; label: strin
         <table {...LAYOUT}>
           <tbody>
             <tr>
-              <td style={{ ...TEXT, background: INK, padding: '9px 20px' }}>
+              <td data-apart style={{ ...TEXT, background: INK, padding: '9px 20px' }}>
                 <a href={href} style={{ color: PAPER, textDecoration: 'none', fontWeight: 600 }}>
                   {label}
                 </a>
@@ -98,7 +107,7 @@ export function CautionBlock({ children }: { children: ReactNode }) {
   const rule = `1px solid ${CAUTION}`;
   return (
     <tr>
-      <td style={{ padding: '20px 0 0' }}>
+      <td data-apart style={{ padding: '20px 0 0' }}>
         <table
           {...LAYOUT}
           width="100%"
@@ -119,5 +128,9 @@ export function CautionBlock({ children }: { children: ReactNode }) {
 
 /** Small print at the end. */
 export function FootLine({ children }: { children: ReactNode }) {
-  return <Line style={{ ...SMALL, padding: '12px 32px 20px' }}>{children}</Line>;
+  return (
+    <Line apart style={{ ...SMALL, padding: '12px 32px 20px' }}>
+      {children}
+    </Line>
+  );
 }

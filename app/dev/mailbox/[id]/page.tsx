@@ -39,14 +39,14 @@ export default async function MessagePage({ params }: { params: Promise<{ id: st
             </ul>
           </Section>
         )}
-        <div className="gap-x-8 md:grid md:grid-cols-2">
+        <div className="gap-x-8 md:grid md:grid-cols-[minmax(0,1fr)_580px]">
           <Section title="As it looks">
             {mail.html ? (
               <iframe
                 title="The message’s HTML part"
                 sandbox=""
                 srcDoc={mail.html}
-                className="h-[760px] w-full border border-rule-strong"
+                className="h-[900px] w-full border border-rule-strong"
               />
             ) : (
               <p>It has no HTML part.</p>
