@@ -51,9 +51,9 @@ export async function replaySmallStudy(cast: DemoCast, lastMonth: string, now: s
   const plannedOn = monthEnd(addMonths(lastMonth, 2));
   await new PlanKeeper(cast.statistician, SMALL.code).save(
     {
-      enrolment: { target: 96, rate: { meanPerMonth: 1.4, cv: 0.7, basis: 'data' } },
+      enrolment: { target: 140, rate: { meanPerMonth: 1.4, cv: 0.7, basis: 'data' } },
       events: null,
-      milestones: [{ code: 'LPI', name: 'Last patient in', kind: 'randomised', count: 96, plannedOn }],
+      milestones: [{ code: 'LPI', name: 'Last patient in', kind: 'randomised', count: 140, plannedOn }],
       simulation: { draws: 10_000, seed: 1, horizonMonths: 60 },
     },
     start,
