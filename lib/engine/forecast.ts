@@ -9,6 +9,7 @@ import { type EventsModel, prepareEvents } from './events-model';
 import { type PreparedMilestones, prepareMilestones } from './milestones';
 import { simulateDraws } from './simulate';
 import { startTally, summariseTally, tallyChunk } from './summarise';
+import { unsupportedParts } from './supported';
 import type { Forecast, Study } from './types';
 
 export { serialiseForecast } from './serialise';
@@ -52,6 +53,9 @@ export interface ChunkResult {
  * @throws RangeError where a part is not supported or a posterior is not proper
  */
 export function prepareForecast(study: Study): PreparedForecast {
+  const [refused] = unsupportedParts(study);
+  // The study file's parser says this with a pointer; here it only keeps a part from being left out in silence.
+  if (refused) throw new RangeError(`${refused.pointer}: ${refused.detail}`);
   const cutoff = toDayNumber(study.dataCutoff);
   const horizon = study.simulation.horizonMonths * DAYS_PER_MONTH;
   const enrolment = prepareEnrolment(study);

@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { prepareForecast } from '@/lib/engine/forecast';
 import { unsupportedParts } from '@/lib/engine/supported';
 import type { Study } from '@/lib/engine/types';
 import { exampleStudy } from './example-study';
@@ -37,6 +38,7 @@ describe('what the engine refuses', () => {
       '/events/subjects/5/status',
     ]);
     for (const { detail } of unsupportedParts(study)) expect(detail).toMatch(/^[A-Z].*\.$/);
+    expect(() => prepareForecast(study)).toThrow('/enrolment/ageing');
   });
 
   it('empty lists are nothing to refuse', () => {
