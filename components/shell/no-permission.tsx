@@ -12,6 +12,7 @@ interface NoPermissionProps {
 export function NoPermission({ detail, code }: NoPermissionProps) {
   return (
     <EmptyState
+      heading
       title="This page is not open to you"
       action={
         <Link href={code ? `/studies/${code}` : '/studies'}>{code ? `What you see of ${code}` : 'Your studies'}</Link>

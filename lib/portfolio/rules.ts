@@ -1,11 +1,9 @@
 import { daysApart } from '../dates';
 import { type PortfolioMilestone, type PortfolioOrder, type PortfolioStudy, type Standing, STANDINGS } from './schema';
+import { STALE_AFTER_DAYS } from '../publications/rules';
 
 export const LATE_BELOW = 0.2;
 export const DOUBT_TO = 0.6;
-
-/** Data older than this are said to be old. */
-export const STALE_AFTER_DAYS = 60;
 
 /** When a milestone was or will be there: reached, median, else planned; none of these: last. */
 function dayOf({ forecast, plannedOn }: PortfolioMilestone): string {

@@ -1,5 +1,6 @@
 import { randomUUID } from 'node:crypto';
 import { LockMode } from '@mikro-orm/postgresql';
+import { evaluateAfterLog } from '../alerts/commands';
 import { type AuditChange, type CommandContext, recordAudit } from '../audit/record';
 import type { StudyScope } from '../auth/scope';
 import { calendarDay } from '../clock';
@@ -172,6 +173,7 @@ async function saveMonth(scope: LogScope, save: Save, context: CommandContext): 
     changes: changes.map((change): AuditChange => ({ ...change })),
     reason: save.reason ? `${save.reason.kind}: ${save.reason.text}` : null,
   });
+  await evaluateAfterLog(context, scope);
   return entryOf(scope, site, month, context);
 }
 

@@ -10,12 +10,18 @@ export interface UdcaPatient {
   event: boolean;
 }
 
+/**
+ * The study file's dates begin in 1990, the trial's in 1988: every date is moved by 28 years, after which the Gregorian calendar
+ * repeats itself to the weekday and the leap day. Nothing but the year's name changes.
+ */
+const MOVED_DAYS = 28 * 365.25;
+
 export function udcaPatients(rows: readonly Record<string, string>[]): UdcaPatient[] {
   return rows.map(({ id = '', entry = '', time = '', status }) => ({
     id: Number(id),
-    entry: toDayNumber(entry),
+    entry: toDayNumber(entry) + MOVED_DAYS,
     // Half days stand for an end on the day of entry.
-    last: toDayNumber(entry) + Math.floor(Number(time)),
+    last: toDayNumber(entry) + MOVED_DAYS + Math.floor(Number(time)),
     event: status === '1',
   }));
 }
@@ -63,15 +69,15 @@ export function buildUdcaStudy(patients: readonly UdcaPatient[], dataCutoff: str
         code: 'E37',
         name: '37th event',
         kind: 'events',
-        count: eventsBy(patients, toDayNumber('1991-07-01')),
-        plannedOn: '1991-07-01',
+        count: eventsBy(patients, toDayNumber('2019-07-01')),
+        plannedOn: '2019-07-01',
       },
       {
         code: 'E57',
         name: '57th event',
         kind: 'events',
-        count: eventsBy(patients, toDayNumber('1992-06-30')),
-        plannedOn: '1992-06-30',
+        count: eventsBy(patients, toDayNumber('2020-06-30')),
+        plannedOn: '2020-06-30',
       },
       { code: 'LPI', name: 'Last patient in', kind: 'randomised', count: patients.length },
     ],

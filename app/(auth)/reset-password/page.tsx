@@ -15,6 +15,7 @@ export default async function ResetPasswordPage({
   if (!token || error) {
     return (
       <EmptyState
+        heading
         title="This link does not work any more"
         action={<Link href="/forgotten-password">Ask for a new one</Link>}
       >

@@ -16,7 +16,7 @@ export default async function InvitationPage({ params }: { params: Promise<{ tok
   const invitation = await transact({}, (em) => findInvitation(token, em, systemClock.now()));
   if (!invitation) {
     return (
-      <EmptyState title="This invitation does not work any more">
+      <EmptyState heading title="This invitation does not work any more">
         <p>It has been used, taken back or is older than a week. Ask the person who sent it for a new one.</p>
       </EmptyState>
     );
