@@ -1,9 +1,9 @@
-import { CsvError, parse } from 'csv-parse/sync';
+import { decodeText, fileFault, readRecords } from '../delimited';
 import { type FieldFault, InvalidError } from '../errors';
-import { formatDate } from '../format';
 import { addSiteBody, type SiteField, type SiteInput } from '../sites/schema';
 import { NOTHING_LOGGED, siteFaults } from '../sites/rules';
 import { armColumnFault, isArmColumn } from '../study-file/arm-columns';
+import { readWrittenDate } from '../written-date';
 import { LIST_COLUMNS, type ListColumn, MOST_LISTED_SITES, NEEDED_COLUMNS } from './schema';
 
 const MOST_COLUMNS = 50;
@@ -35,8 +35,7 @@ export interface ListedRow {
 
 /** Reads a site list, or refuses it with every fault by row and column. Nothing is guessed at. */
 export function readSiteList(bytes: Uint8Array, today: string): ListedRow[] {
-  const records = recordsOf(textOf(bytes));
-  const [head, ...rows] = records;
+  const [head, ...rows] = readRecords(decodeText(bytes), MOST_LISTED_SITES * 2);
   if (!head || head.every((cell) => cell.trim() === ''))
     throw fileFault('The file is empty. The first row names the columns: ' + LIST_COLUMNS.join(', ') + '.');
   const columns = columnsOf(head);
@@ -72,49 +71,6 @@ export function refuseAll(faults: readonly FieldFault[]): void {
 
 export function rowFault(row: number, column: ListColumn, detail: string): FieldFault {
   return { pointer: `/rows/${row}/${column}`, detail: `Row ${row}, ${column}: ${detail}` };
-}
-
-function fileFault(detail: string): InvalidError {
-  return new InvalidError([{ pointer: '/file', detail }]);
-}
-
-function textOf(bytes: Uint8Array): string {
-  if (bytes.length === 0) throw fileFault('The file is empty. Choose a CSV file with the site list.');
-  const encoding =
-    bytes[0] === 0xff && bytes[1] === 0xfe ? 'utf-16le' : bytes[0] === 0xfe && bytes[1] === 0xff ? 'utf-16be' : 'utf-8';
-  let text: string;
-  try {
-    text = new TextDecoder(encoding, { fatal: true }).decode(bytes);
-  } catch {
-    throw fileFault('The file is not text in UTF-8. Save it as “CSV UTF-8” and choose it again.');
-  }
-  if (text.includes('\0'))
-    throw fileFault('The file is not a text file. Save the list as “CSV UTF-8” and choose it again.');
-  return text;
-}
-
-function recordsOf(text: string): string[][] {
-  const firstLine = text.slice(0, 10_000).split(/\r?\n|\r/, 1)[0]!;
-  const separators = [',', ';', '\t'];
-  const counts = separators.map((separator) => firstLine.split(separator).length);
-  const delimiter = separators[counts.indexOf(Math.max(...counts))]!;
-  try {
-    return parse(text, {
-      delimiter,
-      relax_column_count: true,
-      skip_empty_lines: false,
-      max_record_size: 100_000,
-      to: MOST_LISTED_SITES * 2,
-    });
-  } catch (error) {
-    if (!(error instanceof CsvError)) throw error;
-    const where = typeof error.lines === 'number' ? `Line ${error.lines}` : 'One line';
-    const what =
-      error.code === 'CSV_MAX_RECORD_SIZE'
-        ? 'is far longer than a site needs. Check its quotation marks'
-        : 'has a quotation mark that opens or closes in the wrong place';
-    throw fileFault(`${where} ${what}.`);
-  }
 }
 
 /** Which column stands at which place; refused with every fault of the head at once. */
@@ -190,46 +146,13 @@ type Cell = { value: string | number | null; fault?: undefined } | { fault: stri
 function readCell(column: ListColumn, text: string): Cell {
   if (column === 'code' || column === 'name' || column === 'city' || column === 'country') return { value: text };
   if (text === '') return { value: null };
-  if (column !== 'cap') return readDate(text);
+  if (column !== 'cap') {
+    const read = readWrittenDate(text);
+    return read.fault === undefined ? { value: read.date } : read;
+  }
   return /^\d{1,7}$/.test(text)
     ? { value: Number(text) }
     : { fault: `“${text}” is not a whole number in plain figures, for example 40.` };
-}
-
-const MONTHS = ['jan', 'feb', 'mar', 'apr', 'may', 'jun', 'jul', 'aug', 'sep', 'oct', 'nov', 'dec'];
-const MONTH_NAMES =
-  /^(jan(uary)?|feb(ruary)?|mar(ch)?|apr(il)?|may|june?|july?|aug(ust)?|sept?(ember)?|oct(ober)?|nov(ember)?|dec(ember)?)$/;
-
-function isoOf(year: number, month: number, day: number): string | null {
-  const iso = `${String(year).padStart(4, '0')}-${String(month).padStart(2, '0')}-${String(day).padStart(2, '0')}`;
-  const time = Date.parse(`${iso}T00:00:00Z`);
-  return !Number.isNaN(time) && new Date(time).toISOString().startsWith(iso) ? iso : null;
-}
-
-/** `2027-03-14` or `14 Mar 2027`. A date in figures that reads two ways is asked back with both readings. */
-function readDate(text: string): Cell {
-  const iso = /^(\d{4})-(\d{2})-(\d{2})$/.exec(text);
-  const words = /^(\d{1,2})[ -]([A-Za-z]{3,9})\.?[ -](\d{4})$/.exec(text);
-  const name = words?.[2]?.toLowerCase() ?? '';
-  const read = iso
-    ? isoOf(Number(iso[1]), Number(iso[2]), Number(iso[3]))
-    : words && MONTH_NAMES.test(name)
-      ? isoOf(Number(words[3]), MONTHS.indexOf(name.slice(0, 3)) + 1, Number(words[1]))
-      : null;
-  if (read) return { value: read };
-  const figures = /^(\d{1,2})[/. -](\d{1,2})[/. -](\d{4}|\d{2})$/.exec(text);
-  const readings = figures
-    ? readingsOf(Number(figures[1]), Number(figures[2]), Number(figures[3]) + (figures[3]!.length === 2 ? 2000 : 0))
-    : [];
-  if (readings.length === 2)
-    return { fault: `“${text}” is ${readings.map(formatDate).join(' or ')}. Write ${readings.join(' or ')}.` };
-  if (readings.length === 1) return { fault: `Write “${text}” as ${readings[0]} or ${formatDate(readings[0]!)}.` };
-  return { fault: `“${text}” is not a date. Write it like 2027-03-14 or 14 Mar 2027.` };
-}
-
-function readingsOf(first: number, second: number, year: number): string[] {
-  const readings = [isoOf(year, second, first), isoOf(year, first, second)].filter((iso) => iso !== null);
-  return [...new Set(readings)];
 }
 
 function repeatedCodes(listed: readonly ListedRow[]): FieldFault[] {
