@@ -128,8 +128,7 @@ function EventsFit({ forecast, planned }: EventsFitProps) {
       )}
       <p className="mt-2 text-13 text-ink-soft">
         {fit.events === null && 'There is nothing to fit yet. '}
-        Planned: {FAMILY_WORDS[planned.family as Family].toLowerCase()}, median {formatDecimal(planned.medianMonths, 1)}{' '}
-        months
+        Planned: {FAMILY_WORDS[planned.family as Family]}, median {formatDecimal(planned.medianMonths, 1)} months
         {planned.basis === 'data'
           ? `, weighing as ${formatDecimal(planned.priorEvents, 0)} events against the ${formatCount(observed.events ?? 0)} observed.`
           : ', taken as known.'}

@@ -62,6 +62,7 @@ export function RunForm({ code, choices, plan, cut }: RunFormProps) {
     try {
       const { number } = await request.mutateAsync(parsed.data);
       router.push(`/studies/${code}/forecasts/${number}`);
+      router.refresh();
     } catch (error) {
       const told = error instanceof ProblemError ? error.problem.errors : undefined;
       setFaults(told ?? [{ pointer: '', detail: (error as Error).message }]);

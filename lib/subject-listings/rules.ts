@@ -3,7 +3,7 @@ import type { Subject, SubjectStatus } from '../engine/types';
 import { type FieldFault, InvalidError } from '../errors';
 import { formatCount } from '../format';
 import { armColumnFault, isArmColumn } from '../study-file/arm-columns';
-import { readWrittenDate } from '../written-date';
+import { readWrittenDate, type WrittenDate } from '../written-date';
 import {
   type Listing,
   type ListingFault,
@@ -107,6 +107,7 @@ export function readListing(
     throw fileFault(`The file has more than ${formatCount(MOST_SUBJECTS)} subjects, the most that a data cut takes.`);
   const listing: Listing = { form, rows: filled, subjects: [], faults: [], faultCount: 0 };
   const firstRowOf = new Map<string, number>();
+  const dateOf = rememberDates();
   rows.forEach((cells, place) => {
     if (cells.every((cell) => cell === '')) return;
     const row = place + 2;
@@ -119,7 +120,7 @@ export function readListing(
       return refuse({ column: null, value: null, detail });
     }
     const cellOf = (field: ListingField): string => cells[columns.indexOf(field)] ?? '';
-    const { subject, faults: unread } = readSubject(cellOf, studyCode, form);
+    const { subject, faults: unread } = readSubject(cellOf, dateOf, { studyCode, form });
     const faults = [...unread, ...check(subject), ...repeated(subject.id, row, firstRowOf)];
     for (const { field, detail } of faults) {
       const at = columns.indexOf(field);
@@ -161,10 +162,20 @@ function readHead(head: readonly string[]): { form: ListingForm; columns: Listin
   return { form, columns: columns as ListingField[] };
 }
 
+/** Hundreds of thousands of cells hold some hundreds of days. */
+function rememberDates(): (text: string) => WrittenDate {
+  const known = new Map<string, WrittenDate>();
+  return (text) => {
+    const read = known.get(text) ?? readWrittenDate(text);
+    if (known.size < 10_000) known.set(text, read);
+    return read;
+  };
+}
+
 function readSubject(
   cellOf: (field: ListingField) => string,
-  studyCode: string,
-  form: ListingForm,
+  readDate: (text: string) => WrittenDate,
+  { studyCode, form }: { studyCode: string; form: ListingForm },
 ): { subject: ReadSubject; faults: SubjectFault[] } {
   const faults: SubjectFault[] = [];
   const id = cellOf('id');
@@ -178,7 +189,7 @@ function readSubject(
     faults.push({ field: 'study', detail: `This study is ${studyCode}. Send its own listing.` });
   const dateOf = (field: 'randomisedOn' | 'statusOn'): string => {
     const text = cellOf(field);
-    const read = text === '' ? { fault: 'This cell is empty. Give a date like 2027-03-14.' } : readWrittenDate(text);
+    const read = text === '' ? { fault: 'This cell is empty. Give a date like 2027-03-14.' } : readDate(text);
     if (read.fault === undefined) return read.date;
     faults.push({ field, detail: read.fault });
     return '';

@@ -264,4 +264,18 @@ describe('an accepted cut', () => {
     expect((await download('statistician', 2)).status).toBe(404);
     expect((await list('statistician')).json.items.map((cut: { number: number }) => cut.number)).toEqual([2, 1]);
   });
+
+  it('takes two hundred thousand subjects in one file', async () => {
+    const rows = Array.from({ length: 200_000 }, (_, place) => `S${place},101,2026-05-02,at-risk,2026-05-31`);
+    const large = [head, ...rows].join('\n');
+    const body = { cutoffOn: '2026-05-31', note: 'A listing to see what fits.' };
+    const before = await rowsOf('data_cut_subject');
+    const started = performance.now();
+    const shown = await send('preview', 'statistician', large, { cutoffOn: body.cutoffOn });
+    expect(shown.json.counts.subjects).toBe(200_000);
+    expect(performance.now() - started).toBeLessThan(5_000);
+    const reply = await send('accept', 'statistician', large, body);
+    expect([reply.status, reply.json.counts.subjects]).toEqual([201, 200_000]);
+    expect(await rowsOf('data_cut_subject')).toBe(before + 200_000);
+  }, 60_000);
 });

@@ -7,13 +7,18 @@ import { RunWatch } from '@/components/forecasts/run-watch';
 import { NoPermission } from '@/components/shell/no-permission';
 import { ButtonLink } from '@/components/ui/button-link';
 import { EmptyState } from '@/components/ui/empty-state';
+import { Notice } from '@/components/ui/notice';
 import { PageHead } from '@/components/ui/page-head';
 import { Pagination } from '@/components/ui/pagination';
 import { Section } from '@/components/ui/section';
+import { calendarDay, systemClock } from '@/lib/clock';
+import { daysApart } from '@/lib/dates';
+import { formatDate, formatQuantity } from '@/lib/format';
 import { findLatestRuns, getRun, listRuns } from '@/lib/forecasts/queries';
 import { pageQuery } from '@/lib/http/params';
 import { readStudy } from '@/lib/http/page';
 import { countReaders } from '@/lib/publications/queries';
+import { STALE_AFTER_DAYS } from '@/lib/publications/rules';
 
 export const metadata: Metadata = { title: 'Forecasts' };
 
@@ -35,18 +40,22 @@ export default async function ForecastsPage({ params, searchParams }: Props) {
     return {
       done: done === null ? null : await viewOf(done),
       latest: latest === null || latest === done ? null : await viewOf(latest),
+      today: calendarDay(systemClock.now()),
       runs: await listRuns(scope, { query }, { em }),
       readers: await countReaders(scope, em),
     };
   });
   if (!read.permitted) return <NoPermission detail={read.detail} code={code} />;
-  const { done, latest, runs, readers } = read.data;
+  const { done, latest, runs, readers, today } = read.data;
   const home = `/studies/${code}`;
   const underWay = latest && (latest.status === 'queued' || latest.status === 'running');
+  // A run that somebody cancelled is no news once there is a forecast to show.
+  const told = latest && !(done && latest.status === 'cancelled');
+  const age = done ? daysApart(done.cutoffOn, today) : 0;
   return (
     <>
       {!done && <PageHead path={[{ label: code, href: home }, { label: 'Forecasts' }]} title="Forecasts" />}
-      {latest && (
+      {told && (
         <div className={done ? 'mb-8' : undefined}>
           {underWay ? (
             <RunWatch key={latest.number} code={code} run={latest} shown={done?.number} />
@@ -67,6 +76,11 @@ export default async function ForecastsPage({ params, searchParams }: Props) {
         >
           A run needs a saved plan and at least one site. A data cut makes it forecast events as well.
         </EmptyState>
+      )}
+      {done && age > STALE_AFTER_DAYS && (
+        <Notice tone="caution" title={`Data are ${formatQuantity(age, 'day')} old`} className="mb-5">
+          The newest forecast is from data to {formatDate(done.cutoffOn)}. What came in since is not in it.
+        </Notice>
       )}
       {done?.forecast && done.context && (
         <RunDone code={code} run={done} forecast={done.forecast} context={done.context} readers={readers} />
