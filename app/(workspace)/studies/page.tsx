@@ -1,4 +1,5 @@
 import type { Metadata } from 'next';
+import { redirect } from 'next/navigation';
 import { PageFrame } from '@/components/shell/page-frame';
 import { PortfolioBoard } from '@/components/studies/portfolio-board';
 import { PortfolioFind } from '@/components/studies/portfolio-find';
@@ -24,11 +25,13 @@ export default async function StudiesPage({ searchParams }: { searchParams: Prom
   );
   const parsed = portfolioQuery.safeParse(typed);
   const query = parsed.success ? parsed.data : portfolioQuery.parse({});
-  const { portfolio, isOwner } = await transact({ personId: actor.personId }, async (em) => ({
+  const { portfolio, head } = await transact({ personId: actor.personId }, async (em) => ({
     portfolio: await listStudies({ actor }, { query }, { em, clock: systemClock }),
-    isOwner: (await getPersonHead({ actor }, em)).isOwner,
+    head: await getPersonHead({ actor }, em),
   }));
   const { items, page, size, total, all } = portfolio;
+  // A coordinator of one site has nothing to choose from: their work is the month sheet.
+  if (!head.hasList && items[0]) redirect(`/studies/${encodeURIComponent(items[0].code)}/log`);
   const hrefOf = (changed: Record<string, string>): string =>
     `?${new URLSearchParams({ ...query, page: '1', ...changed })}`;
   const shown = items.some((study) => study.published);
@@ -37,16 +40,16 @@ export default async function StudiesPage({ searchParams }: { searchParams: Prom
       <PortfolioHead
         portfolio={portfolio}
         order={query.order}
-        isOwner={isOwner}
+        isOwner={head.isOwner}
         orderHref={(order) => hrefOf({ order })}
       />
       {all > 1 && <PortfolioFind query={query} legend={items.some((study) => study.milestones.length > 0)} />}
       {all === 0 && (
         <EmptyState
           title="No study yet is yours"
-          action={isOwner && <ButtonLink href="/organisation">Set up a study</ButtonLink>}
+          action={head.isOwner && <ButtonLink href="/organisation">Set up a study</ButtonLink>}
         >
-          {isOwner
+          {head.isOwner
             ? 'Set one up, then invite its protocol statistician.'
             : 'When somebody gives you a role in a study, it stands here. Ask the study’s manager or your organisation’s owner.'}
         </EmptyState>
