@@ -46,7 +46,7 @@ function EnrolmentFit({ forecast, plan }: RunFitProps) {
       <Table dense caption="Enrolment, fitted and planned">
         <TableHead>
           <Row>
-            <HeadCell>&nbsp;</HeadCell>
+            <HeadCell>Rate</HeadCell>
             <HeadCell num>Fitted</HeadCell>
             <HeadCell num>Planned</HeadCell>
           </Row>
