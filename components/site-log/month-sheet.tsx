@@ -37,6 +37,9 @@ function SheetPage({ code, personId, initial, path, onDevice }: MonthSheetProps 
   const [chosen, setChosen] = useState<string | null>(null);
   const { site, mayLog, months } = state.sheet;
   const inHand = chosen && state.openMonths.includes(chosen) ? chosen : (state.openMonths.at(-1) ?? null);
+  // The save that completes the last open row still says what was saved and when.
+  const saved = state.outcome?.kind === 'saved' ? state.outcome.entries.at(-1)?.month : undefined;
+  const barMonth = inHand ?? saved;
   const choose = (month: string): void => {
     state.openMonth(month);
     setChosen(month);
@@ -62,13 +65,13 @@ function SheetPage({ code, personId, initial, path, onDevice }: MonthSheetProps 
           <div className="md:col-span-12 lg:col-span-9">
             <DraftNotice state={state} />
             {phone && inHand && <OpenMonthFields state={state} month={inHand} />}
-            {phone && inHand && <SaveBar state={state} month={inHand} />}
+            {phone && barMonth && <SaveBar state={state} month={barMonth} />}
             <ConflictNotice state={state} onCorrect={setCorrecting} />
             {phone && <PasteNotice state={state} />}
             {phone && <Gaps state={state} inHand={inHand} onChoose={choose} />}
             {phone && <h2 className="mt-8 mb-3">Earlier months</h2>}
             {ledger}
-            {!phone && inHand && <SaveBar state={state} month={inHand} />}
+            {!phone && barMonth && <SaveBar state={state} month={barMonth} />}
             {!phone && <PasteNotice state={state} />}
             <Balance state={state} />
           </div>
