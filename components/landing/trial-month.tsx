@@ -10,14 +10,14 @@ const DAYS = [
   {
     day: '3',
     month: 'Apr',
-    title: 'Doubts are cleared',
-    text: 'A question goes to the site, a correction keeps what stood there before, who changed it and why. Then the data are cut.',
+    title: 'Figures are put right',
+    text: 'A correction keeps what stood there before, who changed it and why. Then the data are cut and held against the log.',
   },
   {
     day: '5',
     month: 'Apr',
     title: 'The forecast runs',
-    text: 'Thousands of futures of the trial are drawn; the statistician sees what moved each date, and by how much.',
+    text: 'Thousands of futures of the trial are drawn; the statistician sees by how much each date has moved.',
   },
   {
     day: '6',
@@ -29,13 +29,13 @@ const DAYS = [
     day: '19',
     month: 'May',
     title: 'A date slips',
-    text: 'Whoever asked to be told hears by e-mail how far it moved and why.',
+    text: 'Whoever asked to be told hears by e-mail how far it moved, in the statistician’s words why.',
   },
   {
     day: '26',
     month: 'Dec',
     title: 'It is looked back on',
-    text: 'What was forecast is held against what came, where everyone concerned can see it.',
+    text: 'Every publication stays as it was said: its readers see how the date moved from the first to the last.',
   },
 ] as const;
 

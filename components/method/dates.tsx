@@ -26,8 +26,8 @@ export function DatesMethod() {
         </p>
         <p>
           The two parameters of enrolment, and of each two-parameter family, have their posterior on a grid of 61 × 61
-          cells around its mode, laid along the axes of its curvature; the grid also yields the weight of each family.
-          Quantiles of dates are of type 7, those of counts of type 1.
+          cells around its mode, laid along the axes of its curvature. Quantiles of dates are of type 7, those of counts
+          of type 1.
         </p>
         <p>
           Random numbers come in streams, one for every 250 draws, merged in order. The same study file, seed and number

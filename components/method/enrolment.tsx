@@ -23,10 +23,10 @@ export function EnrolmentMethod() {
           ln <i>τ</i> − (<i>α</i> + <i>n</i>) ln(<i>β</i> + <i>τ</i>), &ensp;<i>β</i> = <i>α</i>/<i>m</i>
         </Formula>
         <p>
-          Site-time runs from the start of the activation day to the end of what the site has logged, weighted by
-          season, by the first months’ ramp-up and by pauses. <b>A month that is not logged is not a nought</b>: it adds
-          no site-time, and its patients, who exist but are not reported yet, are drawn like the future’s. Countries
-          keep their planned ratio to the mean.
+          Site-time runs from the start of the activation day to the end of what the site has logged, weighted by season
+          and by the first months’ ramp-up. <b>A month that is not logged is not a nought</b>: it adds no site-time, and
+          its patients, who exist but are not reported yet, are drawn like the future’s. Countries keep their planned
+          ratio to the mean.
         </p>
         <p>
           Where <i>m</i> and <i>α</i> are learnt from the counts, every draw takes its own pair from their posterior:
@@ -37,12 +37,11 @@ export function EnrolmentMethod() {
           A site still to open opens on a day drawn from its window (earliest, likely, latest: a triangular
           distribution), given that the day lies after the cut-off. A window that has passed without an opening is
           overdue: such a site opens after the cut-off by an exponential delay with a mean of 30 days, and the forecast
-          says so. Caps stop a site or a country, the target stops all.
+          says so. Caps stop a site, the target stops all.
         </p>
         <Source>
           Anisimov &amp; Fedorov 2007, Statistics in Medicine 26:4958. Anisimov 2011, Communications in Statistics
-          40:3975. Mijoule, Savy &amp; Savy 2012, Statistics in Medicine 31:1655. Lan, Tang &amp; Heitjan 2019,
-          Statistics in Medicine 38:945.
+          40:3975. Mijoule, Savy &amp; Savy 2012, Statistics in Medicine 31:1655.
         </Source>
       </div>
     </Section>

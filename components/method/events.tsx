@@ -12,16 +12,6 @@ const FAMILIES: [family: string, survival: ReactNode, posterior: string][] = [
     </>,
     'grid',
   ],
-  ['Log-normal', '1 − Φ((ln t − μ)/s)', 'grid'],
-  [
-    'Log-logistic',
-    <>
-      1 / (1 + (t/σ)<sup>κ</sup>)
-    </>,
-    'grid',
-  ],
-  ['Gamma', 'Q(κ, t/σ)', 'grid'],
-  ['Piecewise exponential', 'exp(−Σ hⱼ · time in interval j)', 'conjugate gammas, one an interval'],
 ];
 
 export function EventsMethod() {
@@ -62,9 +52,8 @@ export function EventsMethod() {
       <div className="max-w-measure space-y-3">
         <p>
           The plan’s median enters as a prior that weighs as much as a stated number of events, and fades as events come
-          in. Where five families are weighed against one another, each draw first takes a family by its posterior
-          weight; the weights are shown, and no winner is picked in silence. A share of patients who never have the
-          event may be set aside (<i>S</i> becomes π + (1 − π)·<i>S</i>).
+          in. A share of patients who never have the event may be set aside with the Weibull (<i>S</i> becomes π + (1 −
+          π)·<i>S</i>).
         </p>
         <p>
           <b>Patients at risk are carried on from where they are.</b> A patient last seen free of the event at <i>t</i>₀

@@ -2,7 +2,7 @@ import type { Metadata } from 'next';
 import { DatesMethod } from '@/components/method/dates';
 import { EnrolmentMethod } from '@/components/method/enrolment';
 import { EventsMethod } from '@/components/method/events';
-import { MethodLimits, PlanningMethod, PracticeMethod, RecordMethod } from '@/components/method/practice';
+import { MethodLimits, PlanningMethod, PracticeMethod, ChecksMethod } from '@/components/method/practice';
 import { PageFrame } from '@/components/shell/page-frame';
 import { PageHead } from '@/components/ui/page-head';
 
@@ -24,7 +24,7 @@ export default function MethodPage() {
       <EventsMethod />
       <DatesMethod />
       <PracticeMethod />
-      <RecordMethod />
+      <ChecksMethod />
       <PlanningMethod />
       <MethodLimits />
     </PageFrame>
