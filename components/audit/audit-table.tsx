@@ -1,7 +1,8 @@
+import { Fragment } from 'react';
 import { actionWords, valueWords } from '@/components/audit/audit-words';
 import { Cell, HeadCell, Row, RowHead, SubLine, Table, TableBody, TableHead } from '@/components/ui/table';
 import type { AuditEntryView } from '@/lib/audit/schema';
-import { formatInstant } from '@/lib/format';
+import { formatCount, formatInstant } from '@/lib/format';
 
 export function AuditTable({ entries }: { entries: AuditEntryView[] }) {
   return (
@@ -12,7 +13,7 @@ export function AuditTable({ entries }: { entries: AuditEntryView[] }) {
           <HeadCell>When, UTC</HeadCell>
           <HeadCell>Who</HeadCell>
           <HeadCell>What</HeadCell>
-          <HeadCell>From, to</HeadCell>
+          <HeadCell className="w-[38%]">From, to</HeadCell>
           <HeadCell>Why</HeadCell>
         </Row>
       </TableHead>
@@ -34,18 +35,36 @@ export function AuditTable({ entries }: { entries: AuditEntryView[] }) {
               </SubLine>
             </Cell>
             <Cell>
-              <ul>
-                {entry.changes.map((change) => (
-                  <li key={change.field} className="break-words">
-                    {change.field}: <s className="text-ink-soft">{valueWords(change.old)}</s> {valueWords(change.new)}
-                  </li>
-                ))}
-              </ul>
+              <ChangeList changes={entry.changes} />
             </Cell>
             <Cell>{entry.reason}</Cell>
           </Row>
         ))}
       </TableBody>
     </Table>
+  );
+}
+
+/** As many changes as a line or two hold; a list of five thousand sites says how many more. */
+const SHOWN = 12;
+
+function ChangeList({ changes }: Pick<AuditEntryView, 'changes'>) {
+  const more = changes.length - SHOWN;
+  return (
+    <p className="[overflow-wrap:anywhere]">
+      {changes.slice(0, SHOWN).map((change, place) => (
+        <Fragment key={change.field}>
+          {place > 0 && '; '}
+          {change.field}{' '}
+          {change.old !== null && change.old !== undefined && (
+            <>
+              <s className="text-ink-soft">{valueWords(change.old)}</s>{' '}
+            </>
+          )}
+          <span className="font-600">{valueWords(change.new)}</span>
+        </Fragment>
+      ))}
+      {more > 0 && `; and ${formatCount(more)} more`}
+    </p>
   );
 }

@@ -17,12 +17,10 @@ export function actionWords(action: string): string {
   return `${AUDIT_KINDS[kind] ?? kind}: ${verb.replaceAll('-', ' ')}`;
 }
 
-/** A value of any kind in one short line. */
+/** A value of any kind in one short line; of a hash its beginning, as people compare them. */
 export function valueWords(value: unknown): string {
   if (value === null || value === undefined) return 'empty';
-  if (typeof value === 'object') {
-    const text = JSON.stringify(value);
-    return text.length > 120 ? `${text.slice(0, 117)}…` : text;
-  }
-  return String(value);
+  const text = typeof value === 'object' ? JSON.stringify(value) : String(value);
+  if (/^[0-9a-f]{64}$/.test(text)) return `${text.slice(0, 12)}…`;
+  return text.length > 120 ? `${text.slice(0, 117)}…` : text;
 }
