@@ -35,7 +35,7 @@ export function planRelease(timeline: Timeline, { cast, code, month, trial, note
           name: `${code}-${cutoffOn}.csv`,
           bytes: new TextEncoder().encode(subjectListing(trial, cutoffOn)),
         };
-        const body = { cutoffOn, note: 'Differences are months that sites have not logged yet.' };
+        const body = { cutoffOn, note: null };
         state.cut = (await acceptCut(scope, { file, body }, context)).number;
       }),
     );
