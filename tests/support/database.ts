@@ -69,11 +69,3 @@ export async function createTestDatabase(label = 'test'): Promise<TestDatabase> 
     },
   };
 }
-
-/** Runs something on a database of its own; the database is kept when it fails, to be looked at. */
-export async function withTestDatabase<T>(work: (database: TestDatabase) => Promise<T>, label?: string): Promise<T> {
-  const database = await createTestDatabase(label);
-  const result = await work(database);
-  await database.drop();
-  return result;
-}
