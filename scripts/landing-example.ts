@@ -1,8 +1,8 @@
 import { writeFileSync } from 'node:fs';
 import { runForecast } from '@/lib/engine/forecast';
-import type { Study, Subject } from '@/lib/engine/types';
+import type { Study } from '@/lib/engine/types';
 import { addDays, addMonths, monthEnd, monthsFrom } from '@/lib/dates';
-import { generateTrial, subjectListing } from '@/scripts/demo/generate';
+import { generateTrial, subjectsAsOf } from '@/scripts/demo/generate';
 
 /**
  * Writes the saved numbers of the first page's figure: the demonstration's generator (seed 77) as the trial, the engine
@@ -17,14 +17,7 @@ const trial = generateTrial({
   medianMonths: 21,
   lossPerMonth: 0.004,
 });
-const subjects = subjectListing(trial, CUTOFF)
-  .trim()
-  .split('\r\n')
-  .slice(1)
-  .map((line): Subject => {
-    const [id = '', site = '', randomisedOn = '', status, statusOn = ''] = line.split(',');
-    return { id, site, randomisedOn, status: status as Subject['status'], statusOn };
-  });
+const subjects = subjectsAsOf(trial, CUTOFF);
 const openBy = (site: (typeof trial.sites)[number]): boolean => site.activatedOn !== null && site.activatedOn <= CUTOFF;
 
 function studyOf(asPlanned: boolean): Study {

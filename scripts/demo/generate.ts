@@ -2,6 +2,7 @@ import { addDays, addMonths, monthEnd, monthOf, monthsFrom } from '@/lib/dates';
 import { FAMILY_NAMES, FIRST_NAMES } from './names';
 import { PLACES } from './places';
 import { DemoRandom } from './random';
+import type { Subject } from '@/lib/engine/types';
 
 export interface DemoSite {
   code: string;
@@ -147,21 +148,24 @@ function makeLog(random: DemoRandom, site: DemoSite, all: DemoSubject[], lastMon
   });
 }
 
-/** The blinded listing as of a cut-off day: who was randomised by then, and what was known of them. */
-export function subjectListing(trial: DemoTrial, cutoffOn: string): string {
-  const rows = trial.subjects
-    .filter((subject) => subject.randomisedOn <= cutoffOn)
-    .map((subject) => {
-      if (subject.eventOn && subject.eventOn <= cutoffOn)
-        return [subject.id, subject.site, subject.randomisedOn, 'event', subject.eventOn];
-      if (subject.withdrawnOn && subject.withdrawnOn <= cutoffOn)
-        return [subject.id, subject.site, subject.randomisedOn, 'withdrawn', subject.withdrawnOn];
-      return [subject.id, subject.site, subject.randomisedOn, 'at-risk', cutoffOn];
+/** Who was randomised by the end of a day, and what was known of them. */
+export function subjectsAsOf(trial: DemoTrial, cutoffOn: string): Subject[] {
+  return trial.subjects
+    .filter(({ randomisedOn }) => randomisedOn <= cutoffOn)
+    .map(({ id, site, randomisedOn, eventOn, withdrawnOn }): Subject => {
+      const head = { id, site, randomisedOn };
+      if (eventOn && eventOn <= cutoffOn) return { ...head, status: 'event', statusOn: eventOn };
+      if (withdrawnOn && withdrawnOn <= cutoffOn) return { ...head, status: 'withdrawn', statusOn: withdrawnOn };
+      return { ...head, status: 'at-risk', statusOn: cutoffOn };
     });
-  return (
-    [['subject', 'site', 'randomised_on', 'status', 'status_on'], ...rows].map((row) => row.join(',')).join('\r\n') +
-    '\r\n'
+}
+
+/** The same as the blinded listing that a statistician uploads. */
+export function subjectListing(trial: DemoTrial, cutoffOn: string): string {
+  const rows = subjectsAsOf(trial, cutoffOn).map((subject) =>
+    [subject.id, subject.site, subject.randomisedOn, subject.status, subject.statusOn].join(','),
   );
+  return ['subject,site,randomised_on,status,status_on', ...rows].join('\r\n') + '\r\n';
 }
 
 /** When a site logs a month: a few days into the next one, in its morning. */

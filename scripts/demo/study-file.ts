@@ -1,5 +1,5 @@
-import { generateTrial, subjectListing } from '@/scripts/demo/generate';
-import type { Study, Subject } from '@/lib/engine/types';
+import { generateTrial, subjectsAsOf } from '@/scripts/demo/generate';
+import type { Study } from '@/lib/engine/types';
 
 /** The demonstration's large study as a study file, without a database: for measuring. */
 export function demoStudyFile(): Study {
@@ -12,14 +12,7 @@ export function demoStudyFile(): Study {
     medianMonths: 22,
     lossPerMonth: 0.004,
   });
-  const subjects = subjectListing(trial, dataCutoff)
-    .trim()
-    .split('\r\n')
-    .slice(1)
-    .map((line): Subject => {
-      const [id = '', site = '', randomisedOn = '', status, statusOn = ''] = line.split(',');
-      return { id, site, randomisedOn, status: status as Subject['status'], statusOn };
-    });
+  const subjects = subjectsAsOf(trial, dataCutoff);
   return {
     format: 'kalends-study/1',
     study: { code: 'KLD-301', title: 'Velmorat against placebo in adults with chronic kidney disease' },
