@@ -5,7 +5,7 @@ import { useForm } from 'react-hook-form';
 import { signIn } from '@/components/people/sign-in-form';
 import { leaveTo } from '@/components/people/leave-to';
 import { Button } from '@/components/ui/button';
-import { Notice } from '@/components/ui/notice';
+import { FormProblem } from '@/components/ui/form-problem';
 import { TextField } from '@/components/ui/text-field';
 import { callOperation, ProblemError } from '@/lib/http/client';
 import { acceptInvitationOperation } from '@/lib/people/operations';
@@ -33,11 +33,7 @@ export function AcceptInvitationForm({ token, name, email }: Props) {
   });
   return (
     <form onSubmit={save} method="post" noValidate className="max-w-[22rem] space-y-5">
-      {errors.root && (
-        <Notice tone="stop" live title="Not saved">
-          {errors.root.message}
-        </Notice>
-      )}
+      <FormProblem title="Not saved" message={errors.root?.message} />
       <TextField
         label="Your name, as others will see it"
         autoComplete="name"

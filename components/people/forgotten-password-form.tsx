@@ -3,6 +3,7 @@
 import { useForm } from 'react-hook-form';
 import { authRequest } from '@/components/people/auth-request';
 import { Button } from '@/components/ui/button';
+import { FormProblem } from '@/components/ui/form-problem';
 import { Notice } from '@/components/ui/notice';
 import { TextField } from '@/components/ui/text-field';
 
@@ -29,11 +30,7 @@ export function ForgottenPasswordForm() {
   }
   return (
     <form onSubmit={send} method="post" noValidate className="max-w-[22rem] space-y-5">
-      {errors.root && (
-        <Notice tone="stop" live title="Not sent">
-          {errors.root.message}
-        </Notice>
-      )}
+      <FormProblem title="Not sent" message={errors.root?.message} />
       <TextField
         label="E-mail"
         type="email"

@@ -4,7 +4,7 @@ import { zodResolver } from '@hookform/resolvers/zod';
 import { useForm, useWatch } from 'react-hook-form';
 import { toast } from 'sonner';
 import { Button } from '@/components/ui/button';
-import { Notice } from '@/components/ui/notice';
+import { FormProblem } from '@/components/ui/form-problem';
 import { SelectField } from '@/components/ui/select-field';
 import { TextField } from '@/components/ui/text-field';
 import { ROLE_NAMES, type StudyRole } from '@/lib/auth/permissions';
@@ -47,11 +47,7 @@ export function InviteForm({ code, roles, sites }: Props) {
   });
   return (
     <form onSubmit={send} noValidate className="max-w-measure space-y-5">
-      {errors.root && (
-        <Notice tone="stop" live title="Not sent">
-          {errors.root.message}
-        </Notice>
-      )}
+      <FormProblem title="Not sent" message={errors.root?.message} />
       <div className="grid gap-5 sm:grid-cols-2">
         <TextField label="Name" autoComplete="off" error={errors.name?.message} {...form.register('name')} />
         <TextField

@@ -6,6 +6,7 @@ import { useForm } from 'react-hook-form';
 import { z } from 'zod';
 import { authRequest } from '@/components/people/auth-request';
 import { Button } from '@/components/ui/button';
+import { FormProblem } from '@/components/ui/form-problem';
 import { Notice } from '@/components/ui/notice';
 import { TextField } from '@/components/ui/text-field';
 import { password } from '@/lib/people/schema';
@@ -38,11 +39,7 @@ export function ResetPasswordForm({ token }: { token: string }) {
   }
   return (
     <form onSubmit={save} method="post" noValidate className="max-w-[22rem] space-y-5">
-      {errors.root && (
-        <Notice tone="stop" live title="Not saved">
-          {errors.root.message}
-        </Notice>
-      )}
+      <FormProblem title="Not saved" message={errors.root?.message} />
       <TextField
         label="New password"
         type="password"

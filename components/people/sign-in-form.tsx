@@ -5,7 +5,7 @@ import { useForm } from 'react-hook-form';
 import { authRequest } from '@/components/people/auth-request';
 import { leaveTo } from '@/components/people/leave-to';
 import { Button } from '@/components/ui/button';
-import { Notice } from '@/components/ui/notice';
+import { FormProblem } from '@/components/ui/form-problem';
 import { TextField } from '@/components/ui/text-field';
 
 interface Credentials {
@@ -32,11 +32,7 @@ export function SignInForm({ next }: { next: string }) {
   });
   return (
     <form onSubmit={send} method="post" noValidate className="max-w-[22rem] space-y-5">
-      {errors.root && (
-        <Notice tone="stop" live title="Not signed in">
-          {errors.root.message}
-        </Notice>
-      )}
+      <FormProblem title="Not signed in" message={errors.root?.message} />
       <TextField
         label="E-mail"
         type="email"

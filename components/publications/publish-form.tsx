@@ -6,7 +6,7 @@ import { useState } from 'react';
 import { useForm, useWatch } from 'react-hook-form';
 import { Button } from '@/components/ui/button';
 import { ConfirmDialog } from '@/components/ui/confirm-dialog';
-import { Notice } from '@/components/ui/notice';
+import { FormProblem } from '@/components/ui/form-problem';
 import { TextareaField } from '@/components/ui/textarea-field';
 import { sayDone } from '@/components/ui/toaster';
 import { ROLE_NAMES } from '@/lib/auth/permissions';
@@ -64,11 +64,7 @@ export function PublishForm({ code, run, cautions, milestones, readers }: Publis
 
   return (
     <form noValidate className="max-w-measure space-y-5" onSubmit={form.handleSubmit(() => setAsking(true))}>
-      {errors.root && (
-        <Notice tone="stop" live title="Not published">
-          {errors.root.message}
-        </Notice>
-      )}
+      <FormProblem title="Not published" message={errors.root?.message} />
       <TextareaField
         label="Note for the readers"
         hint={`What moved, and why, in plain words. No figure of a site. ${formatCount(note.trim().length)} of ${formatCount(NOTE_LENGTH)} characters.`}

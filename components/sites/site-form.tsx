@@ -6,7 +6,7 @@ import { toast } from 'sonner';
 import { SiteConflict } from '@/components/sites/site-conflict';
 import { Button } from '@/components/ui/button';
 import { FormDateField } from '@/components/ui/form-date-field';
-import { Notice } from '@/components/ui/notice';
+import { FormProblem } from '@/components/ui/form-problem';
 import { NumberField } from '@/components/ui/number-field';
 import { numberTyped } from '@/components/ui/number-typed';
 import { SelectField } from '@/components/ui/select-field';
@@ -110,11 +110,7 @@ export function SiteForm({ code, site, onDone, onLeave }: SiteFormProps) {
   ) => <FormDateField control={form.control} name={name} label={label} />;
   return (
     <form onSubmit={send} noValidate className="space-y-5">
-      {errors.root && (
-        <Notice tone="stop" live title="Not saved">
-          {errors.root.message}
-        </Notice>
-      )}
+      <FormProblem title="Not saved" message={errors.root?.message} />
       <div className="grid gap-3 sm:grid-cols-2">
         {text('code', 'Code')}
         {text('name', 'Name')}

@@ -4,7 +4,7 @@ import { zodResolver } from '@hookform/resolvers/zod';
 import { useRouter } from 'next/navigation';
 import { useForm } from 'react-hook-form';
 import { Button } from '@/components/ui/button';
-import { Notice } from '@/components/ui/notice';
+import { FormProblem } from '@/components/ui/form-problem';
 import { TextField } from '@/components/ui/text-field';
 import { sayDone } from '@/components/ui/toaster';
 import { ProblemError } from '@/lib/http/client';
@@ -39,11 +39,7 @@ export function CreateStudyForm() {
   });
   return (
     <form onSubmit={save} noValidate className="max-w-measure space-y-5">
-      {errors.root && (
-        <Notice tone="stop" live title="Not set up">
-          {errors.root.message}
-        </Notice>
-      )}
+      <FormProblem title="Not set up" message={errors.root?.message} />
       <div className="grid gap-5 sm:grid-cols-2">
         <TextField
           label="Code"
