@@ -4,6 +4,7 @@ import { accountOf, fillSignIn, openAs, PEOPLE, type Person, ready } from './ste
 
 const STUDY = '/studies/KLD-301';
 const OWN_SITE = '107';
+const NOT_OPEN = 'This page is not open to you';
 const PHONE = { width: 390, height: 844 };
 const DESK = { width: 1280, height: 800 };
 
@@ -93,8 +94,11 @@ function complaintsOf(page: Page): string[] {
 const overhang = (page: Page): Promise<number> =>
   page.evaluate(() => document.documentElement.scrollWidth - window.innerWidth);
 
-async function seriousFaults(page: Page): Promise<string[]> {
-  const { violations } = await new AxeBuilder({ page }).analyze();
+/** In the dark only the colours differ, so only they are looked at again. */
+async function seriousFaults(page: Page, scheme: 'light' | 'dark' = 'light'): Promise<string[]> {
+  await page.emulateMedia({ colorScheme: scheme });
+  const axe = new AxeBuilder({ page });
+  const { violations } = await (scheme === 'dark' ? axe.withRules('color-contrast') : axe).analyze();
   return violations
     .filter(({ impact }) => impact === 'serious' || impact === 'critical')
     .flatMap(({ id, nodes }) => nodes.map((node) => `${id}: ${node.target.join(' ')}`));
@@ -103,7 +107,8 @@ async function seriousFaults(page: Page): Promise<string[]> {
 const heading = (page: Page) => page.getByRole('heading', { level: 1 });
 
 for (const person of PEOPLE) {
-  test(`every page of the ${person} opens without a complaint, wide and narrow`, async ({ page }) => {
+  test(`every page of the ${person} opens without a complaint, wide and narrow, light and dark`, async ({ page }) => {
+    test.slow();
     await page.setViewportSize(DESK);
     const complaints = complaintsOf(page);
     await openAs(page, person, OPEN[person][0]!);
@@ -112,8 +117,12 @@ for (const person of PEOPLE) {
       await ready(page);
       expect.soft(new URL(page.url()).pathname).toBe(path);
       await expect.soft(heading(page), path).toBeVisible();
-      await expect.soft(heading(page), path).not.toHaveText('This page is not open to you');
+      await expect.soft(heading(page), path).not.toHaveText(NOT_OPEN);
       expect.soft(await overhang(page), `${path} at ${DESK.width}`).toBeLessThanOrEqual(0);
+      if (MAIN[person].includes(path)) {
+        expect.soft(await seriousFaults(page, 'dark'), `${path}, dark`).toEqual([]);
+        expect.soft(await seriousFaults(page), `${path}, light`).toEqual([]);
+      }
       await page.setViewportSize(PHONE);
       await expect.soft.poll(() => overhang(page), `${path} at ${PHONE.width}`).toBeLessThanOrEqual(0);
       await page.setViewportSize(DESK);
@@ -121,24 +130,14 @@ for (const person of PEOPLE) {
     expect(complaints).toEqual([]);
   });
 
-  test(`the ${person}’s main pages have no serious fault for those who hear or need contrast`, async ({ page }) => {
-    await openAs(page, person, MAIN[person][0]!);
-    for (const path of MAIN[person]) {
-      await page.emulateMedia({ colorScheme: 'light' });
-      await page.goto(path);
-      await ready(page);
-      expect.soft(await seriousFaults(page), `${path}, light`).toEqual([]);
-      await page.emulateMedia({ colorScheme: 'dark' });
-      expect.soft(await seriousFaults(page), `${path}, dark`).toEqual([]);
-    }
-  });
-
   test(`what is not the ${person}’s says so`, async ({ page }) => {
     await openAs(page, person, OPEN[person][0]!);
-    for (const path of CLOSED[person]) {
-      await page.goto(path.startsWith('/') ? path : `${STUDY}/${path}`);
-      await expect.soft(heading(page), path).toHaveText('This page is not open to you');
-    }
+    const [first, ...rest] = CLOSED[person].map((path) => (path.startsWith('/') ? path : `${STUDY}/${path}`));
+    await page.goto(first!);
+    await expect(heading(page)).toHaveText(NOT_OPEN);
+    // The others by what the server sends, which is all that a browser would show.
+    for (const path of rest)
+      expect.soft(await (await page.request.get(path)).text(), path).toMatch(new RegExp(`<h1[^>]*>${NOT_OPEN}</h1>`));
   });
 }
 
