@@ -8,7 +8,7 @@ const schema = z.object({
   KALENDS_DATA: z.string().min(1).default('.data'),
   KALENDS_DEMONSTRATION: z.enum(['0', '1']).default('0'),
   BETTER_AUTH_SECRET: z.string().default(''),
-  KALENDS_SIGN_IN_ATTEMPTS: z.coerce.number().int().min(1).default(10),
+  KALENDS_SIGN_IN_ATTEMPTS: z.coerce.number().int().min(1).optional(),
   KALENDS_TRUSTED_PROXY_HEADER: z.string().default(''),
   DATABASE_URL: z.string().default(''),
   SMTP_URL: z.string().default(''),
@@ -59,7 +59,8 @@ function read(): Env {
       ...(origin.startsWith('http://127.0.0.1') ? [origin.replace('127.0.0.1', 'localhost')] : []),
     ],
     secret: values.BETTER_AUTH_SECRET || 'development-only-secret-that-is-long-enough',
-    signInAttempts: values.KALENDS_SIGN_IN_ATTEMPTS,
+    // Without a proxy that names the client all share one count, and on the first of the month all sign in at once.
+    signInAttempts: values.KALENDS_SIGN_IN_ATTEMPTS ?? (values.KALENDS_TRUSTED_PROXY_HEADER ? 10 : 60),
     trustedProxyHeader: values.KALENDS_TRUSTED_PROXY_HEADER,
     databaseUrl: values.DATABASE_URL,
     dataFolder: values.KALENDS_DATA,
