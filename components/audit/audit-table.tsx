@@ -1,5 +1,5 @@
 import { Fragment } from 'react';
-import { actionWords, valueWords } from '@/components/audit/audit-words';
+import { actionWords, recordWords, valueWords } from '@/components/audit/audit-words';
 import { Cell, HeadCell, Row, RowHead, SubLine, Table, TableBody, TableHead } from '@/components/ui/table';
 import type { AuditEntryView } from '@/lib/audit/schema';
 import { formatCount, formatInstant } from '@/lib/format';
@@ -31,7 +31,7 @@ export function AuditTable({ entries }: { entries: AuditEntryView[] }) {
             <Cell>
               {actionWords(entry.action)}
               <SubLine>
-                {entry.recordType.replaceAll('_', ' ')}, by {entry.source}
+                {recordWords(entry)}, by {entry.source}
               </SubLine>
             </Cell>
             <Cell>

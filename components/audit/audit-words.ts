@@ -24,3 +24,9 @@ export function valueWords(value: unknown): string {
   if (/^[0-9a-f]{64}$/.test(text)) return `${text.slice(0, 12)}…`;
   return text.length > 120 ? `${text.slice(0, 117)}…` : text;
 }
+
+/** Which record: `site month 107 2026-03`. Identifiers that mean nothing to people are left out. */
+export function recordWords({ recordType, recordId }: { recordType: string; recordId: string }): string {
+  const kind = recordType.replaceAll(/[_-]/g, ' ');
+  return /^[0-9a-f]{8}-[0-9a-f]{4}-/.test(recordId) ? kind : `${kind} ${recordId}`;
+}
